@@ -1,0 +1,37 @@
+package assets
+
+import (
+	"embed"
+	"fmt"
+	"io/fs"
+	"path"
+	"strings"
+)
+
+//go:embed plans/*.json
+var plans embed.FS
+
+// PlanNames returns the names of the embedded demo plans, such as "skerry-demo",
+// in alphabetical order.
+func PlanNames() []string {
+	files, err := fs.Glob(plans, "plans/*.json")
+	if err != nil {
+		panic("assets: " + err.Error()) // the pattern is wrong
+	}
+	names := make([]string, len(files))
+	for i, file := range files {
+		names[i] = strings.TrimSuffix(path.Base(file), ".json")
+	}
+	return names
+}
+
+// Plan returns the text of one demo plan, as package plan reads it.
+//
+// It returns an error that wraps fs.ErrNotExist if there is no such plan.
+func Plan(name string) ([]byte, error) {
+	data, err := plans.ReadFile("plans/" + name + ".json")
+	if err != nil {
+		return nil, fmt.Errorf("assets: plan %q, want one of %s: %w", name, strings.Join(PlanNames(), ", "), fs.ErrNotExist)
+	}
+	return data, nil
+}
