@@ -86,16 +86,22 @@ func (c *checker) waist(path string, w OneOrMany) {
 }
 
 func (c *checker) scattering(s *Scattering) {
-	c.within("/scattering/background_a0", s.BackgroundA0, background)
+	if s.BackgroundA0 == 0 || !background.holds(s.BackgroundA0) {
+		c.bad("/scattering/background_a0", background.wanted(s.BackgroundA0))
+	}
 	for i, r := range s.Resonances {
 		path := "/scattering/resonances/" + itoa(i)
 		c.within(path+"/position_g", r.PositionG, position)
 		if r.WidthG == 0 || !width.holds(r.WidthG) {
 			c.bad(path+"/width_g", width.wanted(r.WidthG))
 		}
-		same := func(other Resonance) bool { return other.PositionG == r.PositionG }
-		if first := slices.IndexFunc(s.Resonances, same); first < i {
-			c.bad(path+"/position_g", "the position is taken by /scattering/resonances/"+itoa(first))
+		for j, other := range s.Resonances[:i] {
+			switch {
+			case r.PositionG == other.PositionG:
+				c.bad(path+"/position_g", "the position is taken by /scattering/resonances/"+itoa(j))
+			case r.PositionG+r.WidthG == other.PositionG || other.PositionG+other.WidthG == r.PositionG:
+				c.bad(path, "a pole and a zero at one field cancel with /scattering/resonances/"+itoa(j)+"; want one resonance in their place")
+			}
 		}
 	}
 }

@@ -42,7 +42,7 @@ var (
 	count      = quantity{what: "a whole number of atoms", low: 1, high: 1e10}
 	position   = quantity{what: "a resonance position", unit: "G", low: -50_000, high: 50_000}
 	width      = quantity{what: "a resonance width other than 0", unit: "G", low: -50_000, high: 50_000}
-	background = quantity{what: "a scattering length", unit: "a0", low: -1e6, high: 1e6,
+	background = quantity{what: "a scattering length other than 0", unit: "a0", low: -1e6, high: 1e6,
 		slips: []slip{{18897261246, "metres"}}}
 	energy     = quantity{what: "an energy E/h", unit: "Hz", low: -1e18, high: 1e18}
 	relaxation = quantity{what: "a time", unit: "s", low: 0, above: true, high: 1e18}
