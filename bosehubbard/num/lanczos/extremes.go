@@ -1,0 +1,108 @@
+package lanczos
+
+import (
+	"context"
+	"errors"
+	"fmt"
+)
+
+const (
+	defaultTolerance     = 1e-10
+	defaultMaxIterations = 2000
+)
+
+// ErrNotFinite says that the product with the matrix gave an infinity or a NaN.
+var ErrNotFinite = errors.New("lanczos: the matrix gives numbers that are not finite")
+
+// Options of Extremes. The zero value works.
+type Options struct {
+	Tolerance     float64 // on the residuals, relative to the largest |eigenvalue|; 0: 1e-10
+	MaxIterations int     // products with the matrix in the search; 0: 2000
+	Seed          uint64  // of the random start vector
+	Vectors       bool    // rebuild the vectors of both ends in a second run
+
+	// Progress, if not nil, is called on the computing goroutine after products
+	// with the matrix. done/total is the share of the digits reached; it never
+	// falls.
+	Progress func(done, total int)
+}
+
+// Result holds both ends of the spectrum.
+type Result struct {
+	Lowest, Highest float64
+
+	// |A x - Lowest x| and |A x - Highest x| for the unit vectors x of the ends:
+	// an eigenvalue lies within that distance, and one that is separated by a gap
+	// within residual^2/gap. Without Vectors it is beta_(m+1) |last component|.
+	LowestResidual, HighestResidual float64
+
+	LowestVector, HighestVector []float64 // unit vectors of length n, if asked for
+	Iterations                  int       // products with the matrix in the search
+	Seed                        uint64
+}
+
+// NotConvergedError comes with the last iterate.
+type NotConvergedError struct {
+	Iterations int
+	Residual   float64 // the larger of the two
+}
+
+func (e *NotConvergedError) Error() string {
+	return fmt.Sprintf("lanczos: residual %g after %d iterations, more than the tolerance", e.Residual, e.Iterations)
+}
+
+// Extremes finds the lowest and the highest eigenvalue of the symmetric n x n
+// matrix A. apply(dst, x) sets dst = A x; both have length n and do not overlap.
+// The tolerance is at least 1e-13, since rounding is not far below.
+//
+// The start vector is random, so that no end is missed for lack of overlap, and
+// the same for the same seed. Where an end is degenerate, its vector is one of
+// many. Three vectors of length n are held, five with Vectors. Cost: Iterations
+// products with A, twice that with Vectors.
+//
+// ctx is looked at before and after each product and within long vector sums; a
+// product that takes long should look at it too and may then leave dst undone.
+//
+// It returns ctx.Err() if stopped, a *NotConvergedError with the last iterate,
+// an error that wraps ErrNotFinite, or one for a bad option. It panics if n < 1.
+func Extremes(ctx context.Context, n int, apply func(dst, x []float64), opt Options) (Result, error) {
+	if n < 1 {
+		panic(fmt.Sprintf("lanczos: matrix of size %d, want at least 1", n))
+	}
+	if opt.Tolerance == 0 {
+		opt.Tolerance = defaultTolerance
+	}
+	if opt.MaxIterations == 0 {
+		opt.MaxIterations = defaultMaxIterations
+	}
+	if !(opt.Tolerance >= closed && opt.Tolerance < 1) {
+		return Result{}, fmt.Errorf("lanczos: tolerance %g, want %g to below 1", opt.Tolerance, closed)
+	}
+	if opt.MaxIterations < 1 {
+		return Result{}, fmt.Errorf("lanczos: %d iterations, want at least 1", opt.MaxIterations)
+	}
+	s := newSearch(newRecurrence(ctx, n, apply), opt)
+	if err := s.run(); err != nil {
+		return Result{}, err
+	}
+	if opt.Vectors {
+		if err := s.rebuild(); err != nil {
+			return Result{}, err
+		}
+	}
+	return s.result()
+}
+
+// result reports the ends, with an error if one has not converged.
+func (s *search) result() (Result, error) {
+	low, high := &s.ends[0], &s.ends[1]
+	r := Result{
+		Lowest: low.value, LowestResidual: low.residual, LowestVector: low.vector,
+		Highest: high.value, HighestResidual: high.residual, HighestVector: high.vector,
+		Iterations: s.iterations, Seed: s.opt.Seed,
+	}
+	if !low.converged || !high.converged {
+		return r, &NotConvergedError{Iterations: s.iterations, Residual: max(low.residual, high.residual)}
+	}
+	return r, nil
+}
