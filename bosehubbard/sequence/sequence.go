@@ -76,13 +76,20 @@ func (s *Sequence) HoldTime() (hold float64, ok bool) {
 	return hold, ok
 }
 
-// Crossings returns what the scattering length passes on the way from the end
-// of the stage before to the end of this one, in order. A pole loses doubly
-// occupied sites; a zero is harmless.
-func (s *Sequence) Crossings(curve atom.ScatteringCurve, stage int) []atom.Crossing {
-	from, to := s.Before(stage).Field, s.Stages[stage].End.Field
-	if from == to {
-		return nil
+// Crossings returns, for each stage, what the scattering length passes on the
+// way, in order. A pole loses doubly occupied sites; a zero is harmless. A pole
+// or zero on which a stage ends belongs to that stage.
+func (s *Sequence) Crossings(curve atom.ScatteringCurve) [][]atom.Crossing {
+	path := []float64{s.Start.Field}
+	for _, stage := range s.Stages {
+		path = append(path, stage.End.Field)
 	}
-	return curve.Crossings([]float64{from, to})
+	list := make([][]atom.Crossing, len(s.Stages))
+	if len(list) == 0 {
+		return list
+	}
+	for _, c := range curve.Crossings(path) {
+		list[c.Segment] = append(list[c.Segment], c)
+	}
+	return list
 }
