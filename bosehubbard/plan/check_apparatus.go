@@ -110,7 +110,7 @@ func (c *checker) start(s *Start) {
 	c.depths("/start/depth_er", s.DepthEr)
 	c.powers("/start/power_w", s.PowerW)
 	for _, b := range c.plan.Beams {
-		if _, given := s.PowerW[b.Name]; !given && b.Name != "" {
+		if _, given := s.PowerW[b.Name]; !given && c.beamsNamed() {
 			c.add(&FieldError{Path: JoinPath("start", "power_w", b.Name),
 				Reason: "the key is missing, want the power of every beam before the first stage"})
 		}
@@ -134,10 +134,24 @@ func (c *checker) powers(path string, powers map[string]float64) {
 		for i, b := range c.plan.Beams {
 			known[i] = b.Name
 		}
-		if !slices.Contains(known, name) {
+		if c.beamsNamed() && !slices.Contains(known, name) {
 			c.badWord(at, "no beam has this name", nearest(name, known))
 			continue
 		}
 		c.within(at, powers[name], power)
 	}
+}
+
+// beamsNamed reports whether the names of the beams are good; if not, a power
+// that fits none of them is no second mistake.
+func (c *checker) beamsNamed() bool {
+	if c.wrong("/beams") {
+		return false
+	}
+	for i := range c.plan.Beams {
+		if c.wrong("/beams/" + itoa(i) + "/name") {
+			return false
+		}
+	}
+	return true
 }

@@ -3,6 +3,7 @@ package plan
 import (
 	"fmt"
 	"strconv"
+	"strings"
 )
 
 // MaxDepthEr is the largest lattice depth that a plan may ask for.
@@ -57,11 +58,11 @@ func (q quantity) holds(x float64) bool {
 
 // wanted says what is wrong with x, which lies outside the range.
 func (q quantity) wanted(x float64) string {
-	from := "from "
+	span := " from " + short(q.low) + " to "
 	if q.above {
-		from = "above "
+		span = " above " + short(q.low) + ", up to "
 	}
-	text := "want " + q.what + " " + from + short(q.low) + " to " + short(q.high)
+	text := "want " + q.what + span + short(q.high)
 	if q.unit != "" {
 		text += " " + q.unit
 	}
@@ -80,4 +81,9 @@ func trailing(unit string) string {
 	return " " + unit
 }
 
-func short(x float64) string { return strconv.FormatFloat(x, 'g', 6, 64) }
+// short writes a number with six digits for a message.
+func short(x float64) string {
+	return plainExponent.Replace(strconv.FormatFloat(x, 'g', 6, 64))
+}
+
+var plainExponent = strings.NewReplacer("e+0", "e", "e+", "e", "e-0", "e-")
