@@ -52,7 +52,7 @@ func (s *System) layers(motions []Motion) (Criterion, bool) {
 		}
 		room, k := resonance(a, s.Interaction)
 		keep(criterion("layers", room, "Hz", Leaky, fmt.Sprintf(
-			"|U| = %.4g Hz stands %.4g Hz clear of %d tilt(s) of %.4g Hz along %s", math.Abs(s.Interaction), room, k, math.Abs(a.Tilt), a.Name)))
+			"|U| = %.4g Hz stands %.4g Hz clear of %d x %.4g Hz, the tilt along %s", math.Abs(s.Interaction), room, k, math.Abs(a.Tilt), a.Name)))
 		if zj == 0 {
 			continue
 		}

@@ -1,0 +1,222 @@
+package report
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"sort"
+	"strings"
+
+	"hilltop/bosehubbard/aim"
+	"hilltop/bosehubbard/apparatus"
+	"hilltop/bosehubbard/ceiling"
+	"hilltop/bosehubbard/optics"
+	"hilltop/bosehubbard/plan"
+	"hilltop/bosehubbard/si"
+)
+
+// advise asks for every broken criterion which knob mends it.
+func (b *bench) advise(ctx context.Context, r *Report, end *apparatus.Point, now *ceiling.Assessment) error {
+	if len(now.Broken()) == 0 {
+		return nil
+	}
+	problem := b.problem(end)
+	for i := range r.Ceiling.Criteria {
+		c := &r.Ceiling.Criteria[i]
+		if c.Passed {
+			continue
+		}
+		found, err := problem.Advise(ctx, c.Name, now)
+		if err != nil {
+			return err
+		}
+		if found != nil {
+			c.Advice = adviceOf(found, func(k aim.Knob) string { return settingPath(b.plan, k.Name) })
+		}
+	}
+	return nil
+}
+
+// problem hands the knobs at the end of the last stage to aim, in plan units.
+func (b *bench) problem(end *apparatus.Point) *aim.Problem {
+	p := &aim.Problem{Sign: b.sign}
+	for i, beam := range b.apparatus.Beams {
+		p.Knobs = append(p.Knobs, aim.Knob{
+			Name: "power_w/" + beam.Name, Kind: aim.Power, Value: end.Power[i],
+			High: math.Max(2, 5*end.Power[i]),
+		})
+	}
+	for k, axis := range b.order {
+		p.Knobs = append(p.Knobs, aim.Knob{
+			Name: fmt.Sprintf("depth_er/%d", k), Kind: aim.Depth, Axis: axis, Value: end.Depth[axis],
+			High: math.Max(40, end.Depth[axis]),
+		})
+	}
+	p.Knobs = append(p.Knobs, aim.Knob{
+		Name: "field_g", Kind: aim.Field, Value: end.Field / si.Gauss, High: b.highestField() / si.Gauss,
+	})
+	for i := range p.Knobs {
+		limit(b.plan, &p.Knobs[i])
+	}
+	p.Evaluate = b.evaluator(end)
+	p.FieldsFor = b.fieldsFor(end)
+	return p
+}
+
+// limit narrows a knob's range to what the plan says the lab can set.
+func limit(p *plan.Plan, k *aim.Knob) {
+	for _, path := range []string{settingPath(p, k.Name), "/start/" + k.Name} {
+		given, ok := p.Limits[path]
+		if !ok {
+			continue
+		}
+		if given.Min != nil {
+			k.Low = math.Max(k.Low, *given.Min)
+		}
+		if given.Max != nil {
+			k.High = math.Min(k.High, *given.Max)
+		}
+	}
+}
+
+// highestField covers every resonance of the curve and the field in use, T.
+func (b *bench) highestField() float64 {
+	highest := 2 * math.Max(b.sequence.Start.Field, b.sequence.End().Field)
+	for _, pole := range b.apparatus.Scattering.Poles() {
+		highest = math.Max(highest, 1.2*pole)
+	}
+	return highest
+}
+
+// evaluator judges the last point with other knob values; the knobs come in the
+// order of problem.
+func (b *bench) evaluator(end *apparatus.Point) func([]float64) (*ceiling.Assessment, error) {
+	settings := end.Settings.Clone()
+	var point apparatus.Point
+	return func(values []float64) (*ceiling.Assessment, error) {
+		beams := len(settings.Power)
+		copy(settings.Power, values)
+		for k, axis := range b.order {
+			settings.Depth[axis] = values[beams+k]
+		}
+		settings.Field = values[beams+len(b.order)] * si.Gauss
+		if err := b.apparatus.At(b.workspace, &point, settings); err != nil {
+			return nil, err
+		}
+		return ceiling.Assess(b.system(&point))
+	}
+}
+
+// fieldsFor lists the fields, G, at which a is scale times its value now: those
+// that no pole parts from the present one first, then the nearest.
+func (b *bench) fieldsFor(end *apparatus.Point) func(float64) []float64 {
+	return func(scale float64) []float64 {
+		fields := b.apparatus.Scattering.Fields(scale*end.ScatteringLength, 0, b.highestField())
+		poles := func(to float64) int {
+			count := 0
+			for _, c := range b.apparatus.Scattering.Crossings([]float64{end.Field, to}) {
+				if c.Kind.String() == "pole" {
+					count++
+				}
+			}
+			return count
+		}
+		sort.SliceStable(fields, func(i, j int) bool {
+			if a, b := poles(fields[i]), poles(fields[j]); a != b {
+				return a < b
+			}
+			return math.Abs(fields[i]-end.Field) < math.Abs(fields[j]-end.Field)
+		})
+		for i := range fields {
+			fields[i] = math.Round(fields[i]/si.Gauss*100) / 100
+		}
+		return fields
+	}
+}
+
+// settingPath is where the plan sets the last value of a knob: where it is given
+// now, or, where that is the start and stages follow, the last stage that moves.
+func settingPath(p *plan.Plan, knob string) string {
+	last := len(p.Stages) - 1
+	path := p.Source(last, knob)
+	if strings.HasPrefix(path, "/stages/") {
+		return path
+	}
+	for i := last; i >= 0; i-- {
+		if p.Stages[i].Shape != plan.Hold {
+			name, rest, nested := strings.Cut(knob, "/")
+			if nested {
+				return fmt.Sprintf("/stages/%d/%s/%s", i, name, escape(rest))
+			}
+			return fmt.Sprintf("/stages/%d/%s", i, name)
+		}
+	}
+	return path
+}
+
+func escape(token string) string {
+	return strings.NewReplacer("~", "~0", "/", "~1").Replace(token)
+}
+
+// adviceOf puts moves into words and plan paths.
+func adviceOf(found *aim.Advice, path func(aim.Knob) string) *Advice {
+	out := &Advice{}
+	for _, m := range found.Moves {
+		out.Set = append(out.Set, Set{Path: path(m.Knob), Value: m.To})
+	}
+	out.Text = steps(found.Moves) + outcome(found)
+	return out
+}
+
+// steps puts moves into words; depths that go to one value are named together.
+func steps(moves []aim.Move) string {
+	var words []string
+	for i, m := range moves {
+		if i > 0 && m.Knob.Kind == aim.Depth && moves[i-1].Knob.Kind == aim.Depth && m.To == moves[i-1].To {
+			last := len(words) - 1
+			words[last] = strings.Replace(words[last], " to ", fmt.Sprintf(", %v to ", optics.Axis(m.Knob.Axis)), 1)
+			continue
+		}
+		words = append(words, step(m))
+	}
+	return strings.Join(words, ", ")
+}
+
+func outcome(found *aim.Advice) string {
+	switch {
+	case found.Verdict == ceiling.Sealed:
+		return " to seal."
+	case len(found.New) > 0:
+		return fmt.Sprintf("; this mends it, but then breaks: %s.", criteriaWords(found.New))
+	case len(found.Broken) > 0:
+		return fmt.Sprintf("; still broken then: %s.", criteriaWords(found.Broken))
+	}
+	return "."
+}
+
+func criteriaWords(names []string) string {
+	words := make([]string, len(names))
+	for i, name := range names {
+		words[i] = criterionWords[name]
+	}
+	return strings.Join(words, ", ")
+}
+
+// step is one move in words: "Lower 'sheet' to 31 mW".
+func step(m aim.Move) string {
+	verb := "Raise"
+	if m.To < m.From {
+		verb = "Lower"
+	}
+	switch m.Knob.Kind {
+	case aim.Power:
+		return fmt.Sprintf("%s '%s' to %s mW", verb, strings.TrimPrefix(m.Knob.Name, "power_w/"), number(m.To*1e3, 3))
+	case aim.Depth:
+		return fmt.Sprintf("%s depth %v to %s Er", verb, optics.Axis(m.Knob.Axis), number(m.To, 3))
+	case aim.Field:
+		return fmt.Sprintf("%s the field to %s G", verb, number(m.To, 6))
+	case aim.Interaction:
+		return fmt.Sprintf("Set U to %s Hz", signed(m.To, 4))
+	}
+	return fmt.Sprintf("Set V along %v to %s Hz", optics.Axis(m.Knob.Axis), signed(m.To, 4))
+}

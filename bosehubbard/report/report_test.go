@@ -1,0 +1,264 @@
+package report
+
+import (
+	"context"
+	"encoding/json"
+	"errors"
+	"math"
+	"strings"
+	"testing"
+	"unicode/utf8"
+
+	"hilltop/assets"
+	"hilltop/bosehubbard/plan"
+	"hilltop/testdata"
+)
+
+func shipped(t testing.TB, name string) *plan.Document {
+	t.Helper()
+	data, err := assets.Plan(name)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return open(t, data)
+}
+
+func open(t testing.TB, data []byte) *plan.Document {
+	t.Helper()
+	d, err := plan.Open(data)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return d
+}
+
+func judge(t testing.TB, p *plan.Plan) *Report {
+	t.Helper()
+	r, err := Of(context.Background(), p)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return r
+}
+
+func (r *Report) criterion(name string) *Criterion {
+	for i := range r.Ceiling.Criteria {
+		if r.Ceiling.Criteria[i].Name == name {
+			return &r.Ceiling.Criteria[i]
+		}
+	}
+	return nil
+}
+
+// TestShippedPlans: what each note says is what the judge finds.
+func TestShippedPlans(t *testing.T) {
+	for name, want := range map[string]struct{ verdict, broken string }{
+		"skerry-demo": {"sealed", ""}, "skerry-trapped": {"open", "trap_"}, "skerry-shallow": {"leaky", "one_band"}, "model-chain": {"sealed", ""},
+	} {
+		r := judge(t, shipped(t, name).Plan())
+		if r.Verdict != want.verdict {
+			t.Errorf("%s: %s, want %s: %s", name, r.Verdict, want.verdict, r.Sentence)
+		}
+		worst := r.worst()
+		if (worst == nil) != (want.broken == "") || worst != nil && !strings.HasPrefix(worst.Name, want.broken) {
+			t.Errorf("%s: worst criterion %+v, want %q", name, worst, want.broken)
+		}
+		if worst != nil && worst.Advice == nil {
+			t.Errorf("%s: no advice for %s", name, worst.Name)
+		}
+		if n := utf8.RuneCountInString(r.Sentence); n == 0 || n > sentenceLength {
+			t.Errorf("%s: sentence of %d runes: %q", name, n, r.Sentence)
+		}
+		finite(t, name, r)
+	}
+}
+
+// TestDemoIsHeldAtTheStart and passes the zero, never a pole.
+func TestDemoIsHeldAtTheStart(t *testing.T) {
+	r := judge(t, shipped(t, "skerry-demo").Plan())
+	for _, c := range r.Cautions {
+		if c.Code == "falls" || c.Code == "pole_crossed" {
+			t.Errorf("caution %s: %s", c.Code, c.Text)
+		}
+	}
+	zeros := 0
+	for _, s := range r.Stages {
+		for _, c := range s.Crosses {
+			if c.Kind == "zero" {
+				zeros++
+			}
+		}
+	}
+	if zeros != 1 {
+		t.Errorf("%d zeros crossed, want 1", zeros)
+	}
+}
+
+// TestPublishedSequence: Braun et al., Science 339, 52 (2013): U/J = -2.1(1),
+// h/(2 pi J) = 10(2) ms at 22 Er, horizontal anti-trap 43(1) Hz, lattice recoil
+// and J from plane waves. The calibration of a(B) in the plan is a chosen one.
+func TestPublishedSequence(t *testing.T) {
+	r := judge(t, open(t, testdata.Plan(t, "braun2013")).Plan())
+	if r.Verdict != "sealed" {
+		t.Errorf("%s: %s", r.Verdict, r.Sentence)
+	}
+	end := r.last()
+	within := func(what string, got, want, sigma float64) {
+		if !(math.Abs(got-want) <= sigma) {
+			t.Errorf("%s: %.5g, published %.5g(%.2g)", what, got, want, sigma)
+		}
+	}
+	within("a, a0", *end.ScatteringLengthA0, -37, 1)
+	within("U/J", *end.InteractionPerJ, -2.1, 0.1)
+	within("Er/h, Hz", end.RecoilHz[0], 9436.138, 0.05)
+	within("J/h, Hz", end.TunnellingHz[0], 466.997, 0.467)
+	within("anti-trap along x, Hz", end.TrapHz[0], -43, 1)
+	within("anti-trap along y, Hz", end.TrapHz[1], -43, 1)
+	deep := r.Stages[0]
+	within("hbar/J at 22 Er, ms", *deep.TunnellingTimeMS, 10, 2)
+	within("trap before loading along x, Hz", r.Start.TrapHz[0], 37, 1)
+}
+
+// finite walks everything that is written and finds no NaN or infinity.
+func finite(t *testing.T, name string, r *Report) {
+	t.Helper()
+	text, err := json.Marshal(r)
+	if err != nil {
+		t.Errorf("%s: %v", name, err)
+	}
+	for _, bad := range []string{"NaN", "Inf"} {
+		if strings.Contains(string(text), bad) {
+			t.Errorf("%s: %s in %s", name, bad, text)
+		}
+	}
+}
+
+// TestBoundsInJSON: a number, null for unbounded, absent where not computed.
+func TestBoundsInJSON(t *testing.T) {
+	for _, tc := range []struct {
+		bounds Bounds
+		want   string
+	}{
+		{Bounds{}, `{}`},
+		{Bounds{Floor: Bound{Known: true, Hz: math.Inf(-1)}, Ceiling: Bound{Known: true, Hz: 2.5}}, `{"floor_hz_per_atom":null,"ceiling_hz_per_atom":2.5}`},
+		{Bounds{Ceiling: Bound{Known: true}}, `{"ceiling_hz_per_atom":0}`},
+	} {
+		text, err := json.Marshal(tc.bounds)
+		if err != nil || string(text) != tc.want {
+			t.Errorf("%+v: %s, %v; want %s", tc.bounds, text, err, tc.want)
+		}
+	}
+}
+
+func TestLayeredAxisHasAReasonAndNoBounds(t *testing.T) {
+	r := judge(t, shipped(t, "skerry-demo").Plan())
+	for _, term := range r.Ceiling.Terms {
+		if still := term.Term == "trap_z"; still != (term.Reason != "") || still == term.Ceiling.Known {
+			t.Errorf("%+v", term)
+		}
+	}
+}
+
+func TestLevelsAreRefusedWithTheReason(t *testing.T) {
+	d := open(t, []byte(`{"format": "hilltop-plan", "version": 1, "levels": {"energies_hz": [-8000, 8000], "degeneracies": [1, 1],
+		"bodies": 1e20, "inner_time_s": 1e-4, "outer_time_s": 300, "energy_hz_per_body": 5000}}`))
+	_, err := Of(context.Background(), d.Plan())
+	var mistakes plan.Errors
+	if !errors.As(err, &mistakes) || mistakes[0].Path != "/levels" {
+		t.Errorf("got %v, want a mistake at /levels", err)
+	}
+}
+
+func TestMissingHoldIsAssumedAndSaid(t *testing.T) {
+	d, err := shipped(t, "skerry-demo").With("/stages/4", nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	r := judge(t, d.Plan())
+	if len(r.Cautions) == 0 || r.Cautions[0].Code != "no_hold" {
+		t.Errorf("cautions %+v, want no_hold first", r.Cautions)
+	}
+	end := r.last()
+	if want := 1000 * *end.TunnellingTimeMS; math.Abs(r.HoldMS-want) > 1e-9*want {
+		t.Errorf("hold %g ms, want 1,000 hbar/J = %g ms", r.HoldMS, want)
+	}
+}
+
+// TestGrowthApproachesTheBound: U = 0 on a chain has E_max/N = 2J cos(pi/(L+1))
+// (derived), which rises to the closed-form ceiling 2J.
+func TestGrowthApproachesTheBound(t *testing.T) {
+	d := open(t, []byte(`{"format": "hilltop-plan", "version": 1, "model": {"sites": [8], "periodic": [false], "atoms": 8,
+		"tunnelling_hz": 1.5, "interaction_hz": 0, "curvature_hz": [0]}}`))
+	r := judge(t, d.Plan())
+	if len(r.Ceiling.Exact) < 3 {
+		t.Fatalf("%d sizes solved, want a few: %+v", len(r.Ceiling.Exact), r.Ceiling.Exact)
+	}
+	for _, g := range r.Ceiling.Exact {
+		want := 3 * math.Cos(math.Pi/float64(g.Sites[0]+1))
+		if math.Abs(g.Ceiling-want) > 1e-8 || g.Ceiling > r.Ceiling.Total.Ceiling.Hz {
+			t.Errorf("%d sites: E_max/N = %.10g, want %.10g under %g", g.Sites[0], g.Ceiling, want, r.Ceiling.Total.Ceiling.Hz)
+		}
+	}
+}
+
+// TestGrowthScalesTheTrap: V = v N^(-2/d) keeps V R^2 per atom, so E_max/N of
+// the mirrored Thomas-Fermi state converges instead of drifting away.
+func TestGrowthScalesTheTrap(t *testing.T) {
+	r := judge(t, shipped(t, "model-chain").Plan())
+	n := len(r.Ceiling.Exact)
+	if n < 3 {
+		t.Fatalf("%d sizes: %+v", n, r.Ceiling.Exact)
+	}
+	first := math.Abs(r.Ceiling.Exact[1].Ceiling - r.Ceiling.Exact[0].Ceiling)
+	last := math.Abs(r.Ceiling.Exact[n-1].Ceiling - r.Ceiling.Exact[n-2].Ceiling)
+	if last >= first {
+		t.Errorf("steps of E_max/N grow from %g to %g: %+v", first, last, r.Ceiling.Exact)
+	}
+}
+
+func TestStopWhileJudging(t *testing.T) {
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	if _, err := Of(ctx, shipped(t, "skerry-trapped").Plan()); !errors.Is(err, context.Canceled) {
+		t.Errorf("got %v, want context.Canceled", err)
+	}
+}
+
+func BenchmarkJudge(b *testing.B) {
+	for _, name := range []string{"skerry-demo", "skerry-trapped", "skerry-shallow", "model-chain"} {
+		b.Run("plan="+name, func(b *testing.B) {
+			d := shipped(b, name)
+			j := NewJudge()
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := j.Judge(context.Background(), d.Plan()); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
+
+// BenchmarkKnob is a knob moved in the demo: edit, validate, judge.
+func BenchmarkKnob(b *testing.B) {
+	for _, knob := range []struct {
+		path       string
+		value, end float64
+	}{{"/stages/2/power_w/sheet", 0.02, 0.2}, {"/stages/3/depth_er/0", 5, 8}, {"/stages/1/field_g", 180, 360}} {
+		b.Run("knob="+strings.ReplaceAll(knob.path[1:], "/", "."), func(b *testing.B) {
+			d, j := shipped(b, "skerry-demo"), NewJudge()
+			step := 0
+			b.ReportAllocs()
+			for b.Loop() {
+				step = (step + 1) % 100
+				moved, err := d.With(knob.path, knob.value+(knob.end-knob.value)*float64(step)/100)
+				if err != nil {
+					b.Fatal(err)
+				}
+				if _, err := j.Judge(context.Background(), moved.Plan()); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}

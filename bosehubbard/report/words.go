@@ -1,0 +1,150 @@
+package report
+
+import (
+	"fmt"
+	"regexp"
+	"strconv"
+	"strings"
+	"unicode/utf8"
+)
+
+// number writes v with so many significant digits, no exponent between 1e-4 and
+// 1e6, and a true minus sign.
+func number(v float64, digits int) string {
+	text := strconv.FormatFloat(v, 'g', digits, 64)
+	if strings.ContainsRune(text, 'e') {
+		if a := max(v, -v); a >= 1e-4 && a < 1e7 {
+			text = strconv.FormatFloat(v, 'f', 0, 64)
+		}
+	}
+	return strings.Replace(text, "-", "−", 1)
+}
+
+// minus matches a hyphen that stands for a minus sign.
+var minus = regexp.MustCompile(`(^|[ =(])-(\d)`)
+
+// typeset gives the numbers in a line of text true minus signs.
+func typeset(text string) string { return minus.ReplaceAllString(text, "$1−$2") }
+
+// duration writes a time given in ms, in s where it is long.
+func duration(ms float64) string {
+	if ms >= 1e4 {
+		return number(ms/1e3, 3) + " s"
+	}
+	return number(ms, 3) + " ms"
+}
+
+// signed is number with a plus sign where v is positive.
+func signed(v float64, digits int) string {
+	if v > 0 {
+		return "+" + number(v, digits)
+	}
+	return number(v, digits)
+}
+
+// sentenceLength is the most runes the verdict bar shows.
+const sentenceLength = 96
+
+// sentence is the verdict in words: word, term, number, cure.
+func (r *Report) sentence() string {
+	worst := r.worst()
+	if worst == nil {
+		return r.sealedSentence()
+	}
+	head := title(r.Verdict) + ": " + r.phrase(worst) + "."
+	if worst.Advice != nil {
+		if full := head + " " + worst.Advice.Text; utf8.RuneCountInString(full) <= sentenceLength {
+			return full
+		}
+	}
+	return head
+}
+
+func (r *Report) sealedSentence() string {
+	end := r.last()
+	lives := duration(r.HoldMS)
+	if end != nil && end.TunnellingTimeMS != nil && *end.TunnellingTimeMS > 0 {
+		lives += ", " + number(r.HoldMS / *end.TunnellingTimeMS, 3) + " ħ/J"
+	}
+	side := "above"
+	if r.AimSign == "positive" {
+		side = "below"
+	}
+	tight := r.tightest()
+	if tight == nil {
+		return fmt.Sprintf("Sealed: bounded %s through the hold (%s).", side, lives)
+	}
+	return fmt.Sprintf("Sealed: bounded %s through the hold (%s). Tightest: %s.", side, lives, criterionWords[tight.Name])
+}
+
+// tightest returns the criterion with the least room in Hz of energy, or nil.
+func (r *Report) tightest() *Criterion {
+	var least *Criterion
+	for i := range r.Ceiling.Criteria {
+		c := &r.Ceiling.Criteria[i]
+		if c.Name == "one_band" || c.Name == "edge" || c.Name == "layers" {
+			if least == nil || c.Margin < least.Margin {
+				least = c
+			}
+		}
+	}
+	return least
+}
+
+var criterionWords = map[string]string{
+	"interaction": "interaction", "trap_x": "trap along x", "trap_y": "trap along y", "trap_z": "trap along z",
+	"tilt": "tilt", "one_band": "one band", "layers": "layers apart", "held": "something holds", "edge": "edge of the beams", "energy": "energy",
+}
+
+// worst returns the first broken criterion that makes the verdict, or nil.
+func (r *Report) worst() *Criterion {
+	for i := range r.Ceiling.Criteria {
+		if c := &r.Ceiling.Criteria[i]; !c.Passed && c.Breaks == r.Verdict {
+			return c
+		}
+	}
+	return nil
+}
+
+func (r *Report) last() *Stage {
+	if n := len(r.Stages); n > 0 {
+		return &r.Stages[n-1]
+	}
+	return r.Start
+}
+
+// phrase says what a broken criterion means, with its number.
+func (r *Report) phrase(c *Criterion) string {
+	positive := r.AimSign == "positive"
+	amount := number(-c.Margin, 3) + " " + unitWords[c.Unit]
+	switch c.Name {
+	case "interaction":
+		if positive {
+			return "atoms attract (" + signed(c.Margin, 3) + " " + unitWords[c.Unit] + "), no floor"
+		}
+		return "atoms repel (" + signed(-c.Margin, 3) + " " + unitWords[c.Unit] + "), no ceiling"
+	case "trap_x", "trap_y", "trap_z":
+		axis := c.Name[len(c.Name)-1:]
+		if positive {
+			return "trap pushes outwards along " + axis + " (" + signed(c.Margin, 3) + " " + unitWords[c.Unit] + ")"
+		}
+		return "trap still confines along " + axis + " (" + signed(-c.Margin, 3) + " " + unitWords[c.Unit] + ")"
+	case "tilt":
+		return "a tilted axis moves with no curvature to stop it"
+	case "one_band":
+		return "two atoms can leave the band (gap short by " + amount + ")"
+	case "layers":
+		return "atoms hop between layers (short by " + amount + ")"
+	case "held":
+		return "nothing holds the cloud"
+	case "edge":
+		return "the beams end too soon (short by " + amount + ")"
+	case "energy":
+		return "the state lies past infinite temperature (by " + amount + " per site)"
+	}
+	return c.Name
+}
+
+var unitWords = map[string]string{"Hz": "Hz", "a0": "a0", "Hz/site2": "Hz/site²"}
+
+func title(word string) string { return strings.ToUpper(word[:1]) + word[1:] }
