@@ -31,9 +31,10 @@ type Options struct {
 type Result struct {
 	Lowest, Highest float64
 
-	// |A x - Lowest x| and |A x - Highest x| for the unit vectors x of the ends:
-	// an eigenvalue lies within that distance, and one that is separated by a gap
-	// within residual^2/gap. Without Vectors it is beta_(m+1) |last component|.
+	// |A x - Lowest x| and |A x - Highest x| for the unit vectors x of the ends,
+	// without Vectors calculated as beta_(m+1) |last component|. An eigenvalue lies
+	// within the residual, and within residual^2/gap if it stands apart; eigenvalues
+	// that crowd closer than that are not told apart.
 	LowestResidual, HighestResidual float64
 
 	LowestVector, HighestVector []float64 // unit vectors of length n, if asked for

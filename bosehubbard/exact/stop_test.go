@@ -1,0 +1,160 @@
+package exact
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"math"
+	"strings"
+	"testing"
+	"time"
+
+	"hilltop/bosehubbard"
+	"hilltop/bosehubbard/fock"
+	"hilltop/bosehubbard/lattice"
+	"hilltop/bosehubbard/num/lanczos"
+)
+
+func mustChain(t testing.TB, sites int) (*lattice.Lattice, bosehubbard.Model) {
+	t.Helper()
+	l, err := lattice.Box([]int{sites}, []bool{false})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{{Tunnelling: 1, Curvature: -0.05}}, Interaction: -2.1}
+}
+
+func TestSolveRefuses(t *testing.T) {
+	l, m := mustChain(t, 6)
+	for _, tc := range []struct {
+		change func(m *bosehubbard.Model, atoms *int, opt *Options)
+		want   string
+	}{
+		{func(_ *bosehubbard.Model, atoms *int, _ *Options) { *atoms = -1 }, "-1 atoms"},
+		{func(m *bosehubbard.Model, _ *int, _ *Options) { m.Axes = make([]bosehubbard.AxisTerms, 2) }, "2 axes on a lattice of 1"},
+		{func(m *bosehubbard.Model, _ *int, _ *Options) { m.Interaction = math.NaN() }, "NaN"},
+		{func(m *bosehubbard.Model, _ *int, _ *Options) { m.Axes[0].Tunnelling = math.Inf(1) }, "Inf"},
+		{func(_ *bosehubbard.Model, _ *int, opt *Options) { opt.Tolerance = -1 }, "tolerance -1"},
+		{func(_ *bosehubbard.Model, _ *int, opt *Options) { opt.MaxIterations = -1 }, "-1 iterations"},
+	} {
+		model, atoms, opt := m, 6, Options{}
+		model.Axes = append([]bosehubbard.AxisTerms(nil), m.Axes...)
+		tc.change(&model, &atoms, &opt)
+		if _, err := Solve(context.Background(), l, model, atoms, opt); err == nil || !strings.Contains(err.Error(), tc.want) {
+			t.Errorf("got %v, want an error with %q", err, tc.want)
+		}
+	}
+}
+
+// What does not fit is refused at once, with figures.
+func TestSolveTooLarge(t *testing.T) {
+	for _, atoms := range []int{22, 1000, 1_000_000_000} {
+		l, m := mustChain(t, 22)
+		begin := time.Now()
+		_, err := Solve(context.Background(), l, m, atoms, Options{MemoryBytes: 1e9})
+		var large *fock.TooLargeError
+		if !errors.As(err, &large) {
+			t.Fatalf("%d atoms on 22 sites: %v, want a *fock.TooLargeError", atoms, err)
+		}
+		if large.Sites != 22 || large.Atoms != atoms || large.BytesAvailable != 1e9 || large.BytesWanted < 1e9 || large.LargestSites < 1 {
+			t.Errorf("%d atoms on 22 sites: %+v", atoms, *large)
+		}
+		if spent := time.Since(begin); spent > 50*time.Millisecond {
+			t.Errorf("%d atoms on 22 sites: refused after %v, want at once", atoms, spent)
+		}
+	}
+	l, m := mustChain(t, 12) // the largest size of the design fits 100 MB
+	if _, err := fock.Fit(l.Sites, 12, fock.Options{MemoryBytes: 1e8, Vectors: 5}); err != nil {
+		t.Errorf("12 atoms on 12 sites in 100 MB: %v", err)
+	}
+	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 4e7}); err == nil {
+		t.Error("12 atoms on 12 sites fitted 40 MB, want a refusal: four vectors take 43 MB")
+	}
+}
+
+func TestSolveNotConverged(t *testing.T) {
+	l, m := mustChain(t, 8)
+	ends, err := Solve(context.Background(), l, m, 8, Options{MaxIterations: 12})
+	var short *lanczos.NotConvergedError
+	if !errors.As(err, &short) || short.Iterations != 12 || ends.Iterations != 12 {
+		t.Fatalf("12 iterations: %v with %+v, want a *lanczos.NotConvergedError", err, ends)
+	}
+	full, err := Solve(context.Background(), l, m, 8, Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !(ends.Floor >= full.Floor && ends.Floor < full.Floor+5 && ends.Ceiling <= full.Ceiling && ends.Ceiling > full.Ceiling-5) {
+		t.Errorf("last iterate %g to %g, want it just inside %g to %g", ends.Floor, ends.Ceiling, full.Floor, full.Ceiling)
+	}
+}
+
+// A stop at any time, while building or solving, takes under 50 ms. The best of
+// three, since the machine may be busy.
+func TestSolveStops(t *testing.T) {
+	if testing.Short() {
+		t.Skip("needs a second")
+	}
+	l, m := mustChain(t, 11)
+	for _, delay := range []time.Duration{0, 2 * time.Millisecond, 20 * time.Millisecond, 150 * time.Millisecond} {
+		best := time.Hour
+		for range 3 {
+			ctx, cancel := context.WithTimeout(context.Background(), delay)
+			begin := time.Now()
+			_, err := Solve(ctx, l, m, 11, Options{Tolerance: 1e-13, EndStates: true})
+			best = min(best, time.Since(begin)-delay)
+			cancel()
+			if !errors.Is(err, context.DeadlineExceeded) {
+				t.Fatalf("stopped after %v: %v, want context.DeadlineExceeded", delay, err)
+			}
+		}
+		if best > 50*time.Millisecond {
+			t.Errorf("a stop after %v took %v more, want under 50 ms", delay, best)
+		}
+	}
+}
+
+func TestSolveReportsProgress(t *testing.T) {
+	l, m := mustChain(t, 7)
+	last, whole := -1, 0
+	_, err := Solve(context.Background(), l, m, 7, Options{EndStates: true, Progress: func(done, total int) {
+		if done < last || done > total {
+			t.Errorf("progress %d of %d after %d", done, total, last)
+		}
+		last, whole = done, total
+	}})
+	if err != nil || last != whole || whole == 0 {
+		t.Errorf("%v, last progress %d of %d", err, last, whole)
+	}
+}
+
+// The largest chain of the plain solver, 1,352,078 states, without interaction,
+// where the closed form of the band is the check.
+func TestTwelveAtomsOnTwelveSites(t *testing.T) {
+	if testing.Short() {
+		t.Skip("takes ten seconds")
+	}
+	s := chain(12, 12, false, 0, 0)
+	ends := s.solve(t, Options{})
+	t.Logf("%d iterations, %.2f s and %.2f s", ends.Iterations, ends.BuildSeconds, ends.SolveSeconds)
+	want := 24 * math.Cos(math.Pi/13)
+	near(t, "floor", ends.Floor, -want, 1e-12*want)
+	near(t, "ceiling", ends.Ceiling, want, 1e-12*want)
+	checkResiduals(t, "12 on 12", ends)
+	if ends.Dimension != 1352078 {
+		t.Errorf("dimension %d, want 1352078", ends.Dimension)
+	}
+}
+
+func BenchmarkSolve(b *testing.B) {
+	for _, size := range []int{6, 8, 10} {
+		b.Run(fmt.Sprintf("sites=%d/atoms=%d", size, size), func(b *testing.B) {
+			l, m := mustChain(b, size)
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := Solve(context.Background(), l, m, size, Options{}); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
