@@ -65,7 +65,7 @@ func (b *bench) problem(end *apparatus.Point) *aim.Problem {
 
 // limit narrows a knob's range to what the plan says the lab can set.
 func limit(p *plan.Plan, k *aim.Knob) {
-	for _, path := range []string{settingPath(p, k.Name), "/start/" + k.Name} {
+	for _, path := range []string{settingPath(p, k.Name), p.KnobPath(-1, k.Name), bareKnob(k.Name)} {
 		given, ok := p.Limits[path]
 		if !ok {
 			continue
@@ -77,6 +77,15 @@ func limit(p *plan.Plan, k *aim.Knob) {
 			k.High = math.Min(k.High, *given.Max)
 		}
 	}
+}
+
+// bareKnob is the path by which a plan speaks of a knob in every stage.
+func bareKnob(name string) string {
+	key, rest, nested := strings.Cut(name, "/")
+	if !nested {
+		return plan.JoinPath(key)
+	}
+	return plan.JoinPath(key, rest)
 }
 
 // highestField covers every resonance of the curve and the field in use, T.
@@ -144,18 +153,10 @@ func settingPath(p *plan.Plan, knob string) string {
 	}
 	for i := last; i >= 0; i-- {
 		if p.Stages[i].Shape != plan.Hold {
-			name, rest, nested := strings.Cut(knob, "/")
-			if nested {
-				return fmt.Sprintf("/stages/%d/%s/%s", i, name, escape(rest))
-			}
-			return fmt.Sprintf("/stages/%d/%s", i, name)
+			return p.KnobPath(i, knob)
 		}
 	}
 	return path
-}
-
-func escape(token string) string {
-	return strings.NewReplacer("~", "~0", "/", "~1").Replace(token)
 }
 
 // adviceOf puts moves into words and plan paths.

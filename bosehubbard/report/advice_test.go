@@ -109,13 +109,14 @@ func TestAdviceMendsItsCriterion(t *testing.T) {
 
 func follow(t *testing.T, what string, d *plan.Document, r *Report, c Criterion) {
 	t.Helper()
-	for _, set := range c.Advice.Set {
-		next, err := d.With(set.Path, set.Value)
-		if err != nil {
-			t.Errorf("%s: %s = %v is refused: %v", what, set.Path, set.Value, err)
-			return
-		}
-		d = next
+	edits := make([]plan.Edit, len(c.Advice.Set))
+	for i, set := range c.Advice.Set {
+		edits[i] = plan.Edit{Path: set.Path, Value: set.Value}
+	}
+	d, err := d.Apply(edits...)
+	if err != nil {
+		t.Errorf("%s: %+v is refused: %v", what, c.Advice.Set, err)
+		return
 	}
 	after := judge(t, d.Plan())
 	if mended := after.criterion(c.Name); mended != nil && !mended.Passed {

@@ -5,6 +5,7 @@ import (
 	"encoding/json"
 	"errors"
 	"math"
+	"os"
 	"strings"
 	"testing"
 	"unicode/utf8"
@@ -70,6 +71,22 @@ func TestShippedPlans(t *testing.T) {
 			t.Errorf("%s: sentence of %d runes: %q", name, n, r.Sentence)
 		}
 		finite(t, name, r)
+	}
+}
+
+// TestReadmePlan: the whole plan printed in the README is a good one.
+func TestReadmePlan(t *testing.T) {
+	text, err := os.ReadFile("../../README.md")
+	if err != nil {
+		t.Fatal(err)
+	}
+	_, rest, found := strings.Cut(string(text), "```json\n")
+	body, _, closed := strings.Cut(rest, "```")
+	if !found || !closed {
+		t.Fatal("the README shows no plan")
+	}
+	if r := judge(t, open(t, []byte(body)).Plan()); r.Verdict != "sealed" {
+		t.Errorf("%s: %s", r.Verdict, r.Sentence)
 	}
 }
 

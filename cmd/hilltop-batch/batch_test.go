@@ -236,17 +236,20 @@ func TestRefusedByPhysics(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	for _, tc := range []struct{ name, old, new, path string }{
-		{"field on the pole", `"field_g": 200`, `"field_g": 402.5`, "/stages/1/field_g"},
-		{"wavelength on the D2 line", `"axis": "x", "wavelength_nm": 740`, `"axis": "x", "wavelength_nm": 766.700922`, "/lattice/axes/0/wavelength_nm"},
-		{"unknown species", `"39K"`, `"38K"`, "/cloud/species"},
-		{"unknown state", `"F=1,mF=+1"`, `"F=7,mF=+1"`, "/cloud/state"},
+	for _, tc := range []struct{ name, old, new, path, say string }{
+		{"field on the pole", `"field_g": 200`, `"field_g": 402.5`, "/stages/1/field_g", "402.5: the field stands on a pole"},
+		{"wavelength on the D2 line", `"axis": "x", "wavelength_nm": 740`, `"axis": "x", "wavelength_nm": 766.700922`, "/lattice/axes/0/wavelength_nm", "D2 line of 39K"},
+		{"unknown species", `"39K"`, `"38K"`, "/cloud/species", `want a known species: "39K" or "87Rb"; the nearest known one is "39K"`},
+		{"unknown state", `"F=1,mF=+1"`, `"F=7,mF=+1"`, "/cloud/state", "want a known state"},
 	} {
 		text := strings.Replace(string(data), tc.old, tc.new, 1)
 		failed := object(t, 2, "judge", write(t, []byte(text)))["error"].(map[string]any)
 		fields, ok := failed["fields"].([]any)
 		if !ok || fields[0].(map[string]any)["path"] != tc.path {
 			t.Errorf("%s: %v, want a mistake at %s", tc.name, failed, tc.path)
+		}
+		if message := failed["message"].(string); !strings.Contains(message, tc.say) {
+			t.Errorf("%s: message %q, want %q in it", tc.name, message, tc.say)
 		}
 	}
 }
