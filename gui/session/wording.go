@@ -1,0 +1,181 @@
+package session
+
+import (
+	"fmt"
+	"strconv"
+	"strings"
+	"unicode/utf8"
+
+	"hilltop/bosehubbard/plan"
+	"hilltop/bosehubbard/report"
+)
+
+// sentenceLength is how many characters the verdict's sentence has at most.
+const sentenceLength = 96
+
+// verdict puts the present report into words. The caller holds mu.
+func (s *Session) verdict() Verdict {
+	r := s.work.report
+	v := Verdict{Word: capital(r.Verdict), Aim: r.AimSign, Sentence: fitSentence(r.Sentence)}
+	c := decisive(r)
+	if c == nil {
+		return v
+	}
+	v.Blocking = c.Name
+	if c.Advice != nil {
+		a := s.advice(c.Advice, s.work.advice.verdict)
+		v.Advice = &a
+	}
+	return v
+}
+
+// decisive returns the criterion that makes the verdict what it is: the first
+// broken one of the worst kind, with an advice if one of them has it. It returns
+// nil for a sealed plan.
+func decisive(r *report.Report) *report.Criterion {
+	var first *report.Criterion
+	for i := range r.Ceiling.Criteria {
+		c := &r.Ceiling.Criteria[i]
+		if c.Passed || c.Breaks != r.Verdict {
+			continue
+		}
+		if first == nil {
+			first = c
+		}
+		if c.Advice != nil {
+			return c
+		}
+	}
+	return first
+}
+
+// AdviceFor returns the advice of one criterion of the present report as a
+// button, or false where it has none.
+func (s *Session) AdviceFor(criterion string) (Advice, bool) {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	if s.work.report == nil || s.doc == nil {
+		return Advice{}, false
+	}
+	for _, c := range s.work.report.Ceiling.Criteria {
+		if c.Name == criterion && c.Advice != nil {
+			return s.advice(c.Advice, ""), true
+		}
+	}
+	return Advice{}, false
+}
+
+// advice words a change as a button: knob, from, to, verdict. The caller holds mu.
+func (s *Session) advice(a *report.Advice, verdict string) Advice {
+	out := Advice{Verdict: verdict, Set: a.Set}
+	var steps []string
+	for i, set := range a.Set {
+		step, from, to := s.step(set)
+		steps = append(steps, step)
+		if i == 0 {
+			out.Knob, out.From, out.To = knobAt(set.Path), from, to
+		}
+	}
+	out.Text = strings.Join(steps, "; ")
+	if verdict != "" {
+		out.Text += ", " + verdict
+	}
+	return out
+}
+
+// step words one change: "Lower 'sheet' at 'lower': 45 → 31 mW".
+func (s *Session) step(set report.Set) (text, from, to string) {
+	stage, inStage := stageOf(set.Path)
+	p := s.doc.now.Plan()
+	value, isNumber := set.Value.(float64)
+	if !inStage || !isNumber || stage >= len(p.Stages) {
+		return fmt.Sprintf("Set %s to %v", s.placeOfPath(set.Path), set.Value), "", fmt.Sprint(set.Value)
+	}
+	for _, e := range knobs(p, stage) {
+		if e.ID != knobAt(set.Path) {
+			continue
+		}
+		unit := s.shownUnit(e)
+		from, to = e.measure.Fit(e.value, unit, 10), e.measure.Fit(value, unit, 10)
+		name := strings.TrimPrefix(e.Label, "Power ")
+		bare, _ := strings.CutSuffix(from, " "+Symbol(unit))
+		text = fmt.Sprintf("%s %s at '%s': %s → %s", verb(e.value, value), lowerFirst(name), s.stageName(stage), bare, to)
+		return text, from, to
+	}
+	return fmt.Sprintf("Set %s to %v", set.Path, set.Value), "", fmt.Sprint(set.Value)
+}
+
+func (s *Session) shownUnit(e entry) string {
+	if unit, chosen := s.units[e.ID]; chosen {
+		return unit
+	}
+	return e.Unit
+}
+
+func verb(from, to float64) string {
+	switch {
+	case from < 0 && to > 0 || from > 0 && to < 0:
+		return "Turn"
+	case to < from:
+		return "Lower"
+	}
+	return "Raise"
+}
+
+// stageOf returns the stage that a path lies in; StartStage for /start and
+// /model.
+func stageOf(path string) (int, bool) {
+	tokens, err := plan.SplitPath(path)
+	if err != nil || len(tokens) < 2 {
+		return 0, false
+	}
+	switch tokens[0] {
+	case "start", "model":
+		return StartStage, true
+	case "stages":
+		i, err := strconv.Atoi(tokens[1])
+		return i, err == nil && i >= 0
+	}
+	return 0, false
+}
+
+func editsOf(sets []report.Set) []plan.Edit {
+	out := make([]plan.Edit, len(sets))
+	for i, set := range sets {
+		out[i] = plan.Edit{Path: set.Path, Value: set.Value}
+	}
+	return out
+}
+
+// fitSentence shortens a text to the length of the verdict bar, at the end of a
+// sentence if it can.
+func fitSentence(text string) string {
+	if utf8.RuneCountInString(text) <= sentenceLength {
+		return text
+	}
+	cut := string([]rune(text)[:sentenceLength])
+	if end := strings.LastIndex(cut, ". "); end > 0 {
+		return cut[:end+1]
+	}
+	cut = string([]rune(text)[:sentenceLength-1])
+	if end := strings.LastIndex(cut, " "); end > 0 {
+		cut = cut[:end]
+	}
+	return cut + "…"
+}
+
+func capital(word string) string {
+	if word == "" {
+		return ""
+	}
+	return strings.ToUpper(word[:1]) + word[1:]
+}
+
+// lowerFirst begins a label in the middle of a sentence; names in quotes and
+// symbols stay.
+func lowerFirst(label string) string {
+	if label == "" || label[0] == '\'' {
+		return label
+	}
+	return strings.ToLower(label[:1]) + label[1:]
+}
