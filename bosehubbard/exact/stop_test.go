@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 	"time"
@@ -70,6 +71,9 @@ func TestSolveTooLarge(t *testing.T) {
 	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 4e7}); err == nil {
 		t.Error("12 atoms on 12 sites fitted 40 MB, want a refusal: four vectors take 43 MB")
 	}
+	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 6e7, EndStates: true}); err == nil {
+		t.Error("12 atoms on 12 sites with end states fitted 60 MB, want a refusal: six vectors take 65 MB")
+	}
 }
 
 func TestSolveNotConverged(t *testing.T) {
@@ -110,6 +114,52 @@ func TestSolveStops(t *testing.T) {
 		if best > 50*time.Millisecond {
 			t.Errorf("a stop after %v took %v more, want under 50 ms", delay, best)
 		}
+	}
+}
+
+// polled records the times between looks at a context.
+type polled struct {
+	context.Context
+	last time.Time
+	gaps []time.Duration
+}
+
+func (p *polled) Err() error {
+	now := time.Now()
+	p.gaps = append(p.gaps, now.Sub(p.last))
+	p.last = now
+	return nil
+}
+
+// The context is looked at every 50 ms all through a problem whose single product
+// takes longer. Every run looks at the same places, so the shortest time of three
+// at each leaves out what else the machine is doing.
+func TestSolveLooksAtItsContext(t *testing.T) {
+	if testing.Short() {
+		t.Skip("needs seconds")
+	}
+	l, m := mustChain(t, 13) // 5,200,300 states
+	var shortest []time.Duration
+	for run := range 3 {
+		ctx := &polled{Context: context.Background(), last: time.Now()}
+		_, err := Solve(ctx, l, m, 13, Options{MaxIterations: 2, EndStates: true})
+		var short *lanczos.NotConvergedError
+		if !errors.As(err, &short) {
+			t.Fatalf("2 iterations: %v, want a *lanczos.NotConvergedError", err)
+		}
+		_ = ctx.Err() // the time since the last look counts too
+		if run == 0 {
+			shortest = ctx.gaps
+		}
+		if len(ctx.gaps) != len(shortest) {
+			t.Fatalf("run %d looked %d times, the first one %d times", run, len(ctx.gaps), len(shortest))
+		}
+		for i, gap := range ctx.gaps {
+			shortest[i] = min(shortest[i], gap)
+		}
+	}
+	if longest := slices.Max(shortest); longest > 50*time.Millisecond {
+		t.Errorf("%v passed between two looks at the context, want under 50 ms", longest)
 	}
 }
 
