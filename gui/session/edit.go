@@ -241,7 +241,7 @@ func (s *Session) Reset(id string) error {
 		return nil
 	}
 	var old *entry
-	catalogueOf(saved.Plan(), min(s.stage, len(saved.Plan().Stages)-1)).all(func(o *entry) {
+	s.catalogueOf(saved.Plan(), min(s.stage, len(saved.Plan().Stages)-1)).all(func(o *entry) {
 		if o.ID == id {
 			old = o
 		}
@@ -301,7 +301,7 @@ func (s *Session) Step(id string, n int, size StepSize) error {
 // valueIn returns the value of an entry in another document.
 func (s *Session) valueIn(doc *plan.Document, e entry) float64 {
 	value := e.value
-	catalogueOf(doc.Plan(), s.stage).all(func(o *entry) {
+	s.catalogueOf(doc.Plan(), s.stage).all(func(o *entry) {
 		if o.ID == e.ID {
 			value = o.value
 		}

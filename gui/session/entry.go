@@ -6,7 +6,6 @@ import (
 	"strings"
 
 	"hilltop/bosehubbard/plan"
-	"hilltop/bosehubbard/si"
 )
 
 // entry is a Field with what the session needs to edit it.
@@ -69,20 +68,22 @@ func (s *Session) catalogue() *catalogue {
 		return &catalogue{}
 	}
 	if s.entries.catalogue == nil || s.entries.doc != s.doc.now || s.entries.stage != s.stage {
-		s.entries = entryCache{s.doc.now, s.stage, catalogueOf(s.doc.now.Plan(), s.stage)}
+		s.entries = entryCache{s.doc.now, s.stage, s.catalogueOf(s.doc.now.Plan(), s.stage)}
 	}
 	return s.entries.catalogue
 }
 
-func catalogueOf(p *plan.Plan, stage int) *catalogue {
-	c := &catalogue{knobs: knobs(p, stage)}
+// catalogueOf builds the entries of any plan. The caller holds mu.
+func (s *Session) catalogueOf(p *plan.Plan, stage int) *catalogue {
+	facts := s.factsOf(p)
+	c := &catalogue{knobs: knobs(p, stage, facts.recoil)}
 	add := func(name string, entries []entry) {
 		if len(entries) > 0 {
 			c.groups = append(c.groups, entryGroup{name, entries})
 		}
 	}
 	add("Stage", stageEntries(p, stage))
-	add("Cloud", cloudEntries(p))
+	add("Cloud", cloudEntries(p, facts.states))
 	add("Lattice", latticeEntries(p))
 	add("Beams", beamEntries(p))
 	add("Field", fieldEntries(p))
@@ -197,23 +198,6 @@ func choiceEntry(label, path, text string, choices ...string) entry {
 		return text, nil
 	}
 	return e
-}
-
-// recoils returns the recoil energy of every lattice axis of the plan in Hz, or
-// nil where the plan has none that can be computed.
-func recoils(p *plan.Plan) []float64 {
-	if p.Lattice == nil {
-		return nil
-	}
-	bench, err := p.Apparatus()
-	if err != nil {
-		return nil
-	}
-	out := make([]float64, len(p.Lattice.Axes))
-	for i, axis := range p.Lattice.Axes {
-		out[i] = si.HzFromJoule(bench.Lattice[axisIndex(axis.Axis)].Recoil)
-	}
-	return out
 }
 
 // axisIndex is 0, 1, 2 for x, y, z.

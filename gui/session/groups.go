@@ -28,13 +28,13 @@ func stageEntries(p *plan.Plan, stage int) []entry {
 	}
 }
 
-func cloudEntries(p *plan.Plan) []entry {
+func cloudEntries(p *plan.Plan, states []string) []entry {
 	if p.Cloud == nil {
 		return nil
 	}
 	return []entry{
 		choiceEntry("Species", "/cloud/species", p.Cloud.Species, atom.Names()...),
-		stateEntry(p.Cloud),
+		stateEntry(p.Cloud, states),
 		numberEntry("Atoms", "/cloud/atoms", p.Cloud.Atoms, Measure{Dimension: Number, Whole: true}),
 		numberEntry("Entropy per atom", "/cloud/entropy_per_atom_kb", p.Cloud.EntropyPerAtomKB, Measure{Dimension: Entropy, Unit: "kB"}),
 	}
@@ -42,16 +42,11 @@ func cloudEntries(p *plan.Plan) []entry {
 
 // stateEntry offers the states of the species, or takes any text where it is not
 // known.
-func stateEntry(c *plan.Cloud) entry {
-	species, err := atom.Load(c.Species)
-	if err != nil {
+func stateEntry(c *plan.Cloud, states []string) entry {
+	if states == nil {
 		return textEntry("State", "/cloud/state", c.State)
 	}
-	names := make([]string, len(species.States))
-	for i, state := range species.States {
-		names[i] = state.Name
-	}
-	return choiceEntry("State", "/cloud/state", c.State, names...)
+	return choiceEntry("State", "/cloud/state", c.State, states...)
 }
 
 func latticeEntries(p *plan.Plan) []entry {

@@ -15,8 +15,8 @@ import (
 type keepState struct {
 	own     *copyFile // nil where there is no folder
 	due     time.Time // when the copy must be written; zero where it is up to date
-	written bool      // a copy is on the disk
 	orphans []*copyFile
+	retired []*copyFile // orphans whose work was taken over and is not yet in the own copy
 }
 
 // DefaultFolder returns the folder for recovery and recent files: under
@@ -71,7 +71,10 @@ func (s *Session) endKeeping() {
 	for _, orphan := range s.keep.orphans {
 		orphan.release()
 	}
-	s.keep.orphans = nil
+	for _, orphan := range s.keep.retired {
+		orphan.remove()
+	}
+	s.keep.orphans, s.keep.retired = nil, nil
 }
 
 // keepSoon notes that the copy on the disk is old. The caller holds mu.
@@ -111,31 +114,32 @@ func (s *Session) keepAll() {
 }
 
 // writeCopy brings the copy up to date: written where there are unsaved edits,
-// removed where there are none.
+// removed where there are none. Orphans that were taken over go only then, so
+// that their work is on the disk at every moment.
 func (s *Session) writeCopy() {
 	s.mu.Lock()
 	s.keep.due = time.Time{}
-	own, doc := s.keep.own, s.doc
+	own, doc, retired := s.keep.own, s.doc, s.keep.retired
 	if own == nil || doc == nil {
 		s.mu.Unlock()
 		return
 	}
-	if !doc.dirty() {
-		if s.keep.written {
-			own.empty()
-			s.keep.written = false
-		}
-		s.mu.Unlock()
-		return
-	}
+	s.keep.retired = nil
+	dirty := doc.dirty()
 	saved := work{Name: doc.name, Path: doc.path, Time: time.Now(), Text: string(doc.now.Bytes())}
-	s.keep.written = true
 	s.mu.Unlock()
-	if err := own.write(saved); err != nil {
+	if !dirty {
+		own.empty()
+	} else if err := own.write(saved); err != nil {
 		s.mu.Lock()
+		s.keep.retired = append(s.keep.retired, retired...)
 		s.notice = "No recovery copy: " + err.Error()
 		s.changed(urgent)
 		s.mu.Unlock()
+		return
+	}
+	for _, orphan := range retired {
+		orphan.remove()
 	}
 }
 
@@ -176,20 +180,11 @@ func (s *Session) Recover(id string) error {
 	s.open(doc)
 	s.record("recovered work", "", doc.now, recovered)
 	s.keep.orphans = append(s.keep.orphans[:i:i], s.keep.orphans[i+1:]...)
-	s.secure(left, orphan)
+	s.keep.retired = append(s.keep.retired, orphan)
+	s.keep.due = time.Now()
+	wake(s.wakes.keep)
 	s.changed(urgent)
 	return nil
-}
-
-// secure hands work over from an orphan to the own copy without a moment in which
-// neither is on the disk. The caller holds mu.
-func (s *Session) secure(left work, orphan *copyFile) {
-	if s.keep.own == nil || s.keep.own.write(left) != nil {
-		orphan.release()
-		return
-	}
-	s.keep.written = true
-	orphan.remove()
 }
 
 // DropRecovery deletes the work that an earlier run left.

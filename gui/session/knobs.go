@@ -9,9 +9,10 @@ import (
 	"hilltop/bosehubbard/plan"
 )
 
-// knobs returns the entries of all knobs as they stand at the end of a stage.
-func knobs(p *plan.Plan, stage int) []entry {
-	k := knobReader{plan: p, stage: stage, rows: p.Rows(), recoil: recoils(p)}
+// knobs returns the entries of all knobs as they stand at the end of a stage; recoil
+// holds the recoil energy of every lattice axis in Hz, or nothing.
+func knobs(p *plan.Plan, stage int, recoil []float64) []entry {
+	k := knobReader{plan: p, stage: stage, rows: p.Rows(), recoil: recoil}
 	names := p.Knobs()
 	out := make([]entry, len(names))
 	for i, name := range names {

@@ -52,6 +52,7 @@ type Session struct {
 	notice  string
 	broken  *Broken
 	entries entryCache
+	facts   facts
 
 	work   workState
 	view   viewState

@@ -91,7 +91,7 @@ func (s *Session) step(set report.Set) (text, from, to string) {
 	if !inStage || !isNumber || stage >= len(p.Stages) {
 		return fmt.Sprintf("Set %s to %v", s.placeOfPath(set.Path), set.Value), "", fmt.Sprint(set.Value)
 	}
-	for _, e := range knobs(p, stage) {
+	for _, e := range knobs(p, stage, s.factsOf(p).recoil) {
 		if e.ID != knobAt(set.Path) {
 			continue
 		}
