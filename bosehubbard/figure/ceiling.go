@@ -1,0 +1,96 @@
+package figure
+
+import (
+	"math"
+	"strings"
+
+	"gonum.org/v1/plot/vg"
+
+	"hilltop/bosehubbard/report"
+)
+
+// Ceiling is the picture of the bounds of the energy per atom: a bar per term with
+// a lid where it is bounded and strips where it is not, their sum, the hill along
+// one axis, and a line of sizes.
+type Ceiling struct {
+	Report  *report.Report
+	Options CeilingOptions
+}
+
+var _ Picture = (*Ceiling)(nil)
+
+// Stem returns "ceiling".
+func (c *Ceiling) Stem() string { return "ceiling" }
+
+// Geometry lays the picture out.
+func (c *Ceiling) Geometry(f Frame, s Style) *Geometry {
+	return CeilingGeometry(c.Report, f, s, c.Options)
+}
+
+// Draw draws the picture.
+func (c *Ceiling) Draw(to vg.Canvas, f Frame, s Style) {
+	c.Geometry(f, s).Draw(to, f, s)
+}
+
+// Table lists the bounds of every term and of the total, the ends of growing
+// systems and the sizes. A cell without a number was not computed.
+func (c *Ceiling) Table() Table {
+	t := Table{Columns: []Column{
+		{"part", ""}, {"name", ""}, {"floor per atom", "Hz"}, {"ceiling per atom", "Hz"}, {"value", "Hz"}, {"note", ""},
+	}}
+	none := math.NaN()
+	for _, term := range c.Report.Ceiling.Terms {
+		note := term.Reason
+		if note == "" {
+			note = term.Motion
+		}
+		t.row("term", term.Term, number(term.Floor), number(term.Ceiling), none, note)
+	}
+	total := c.Report.Ceiling.Total
+	t.row("total", "total", number(total.Floor), number(total.Ceiling), none, c.Report.Verdict)
+	for _, e := range c.Report.Ceiling.Exact {
+		t.row("exact", sitesName(e.Sites), e.Floor, e.Ceiling, none, plain(float64(e.Atoms))+" atoms")
+	}
+	for _, m := range sizesOf(c.Report, c.Options.LatticeAxes) {
+		note := ""
+		if m.Name == "|V|" {
+			note = "per site squared"
+		}
+		t.row("size", m.Name, none, none, m.Hz, note)
+	}
+	return t
+}
+
+// number is a bound for a table: NaN where it was not computed.
+func number(b report.Bound) float64 {
+	if b.IsZero() {
+		return math.NaN()
+	}
+	return b.Hz
+}
+
+func sitesName(sites []int) string {
+	parts := make([]string, len(sites))
+	for i, n := range sites {
+		parts[i] = plain(float64(n))
+	}
+	return strings.Join(parts, "x") + " sites"
+}
+
+// At returns the term whose column a point lies in, for a click on its bar; empty
+// where there is none.
+func (g *Geometry) At(p Point) string {
+	if p.Y < g.Plot.Y0 || p.Y > g.Plot.Y1 {
+		return ""
+	}
+	for _, bar := range append(append([]Bar(nil), g.Bars...), g.Total) {
+		reach := math.Max(bar.Overhang, 0.5*trapGap)
+		if axisOf(bar.Term) != "" {
+			reach = 0.5 * trapGap
+		}
+		if p.X >= bar.X0-reach && p.X <= bar.X1+reach {
+			return bar.Term
+		}
+	}
+	return ""
+}
