@@ -2,6 +2,7 @@ package band
 
 import (
 	"math"
+	"slices"
 
 	"gonum.org/v1/gonum/integrate/quad"
 )
@@ -45,18 +46,23 @@ func gradedRule() rule {
 	return r
 }
 
+// legendre returns a Gauss-Legendre rule in ascending order; gonum's descends.
 func legendre(points int, low, high float64) (x, weight []float64) {
 	x, weight = make([]float64, points), make([]float64, points)
 	quad.Legendre{}.FixedLocations(x, weight, low, high)
+	if x[0] > x[points-1] {
+		slices.Reverse(x)
+		slices.Reverse(weight)
+	}
 	return x, weight
 }
 
 // rules are what a Workspace keeps, from shallow to deep. Each is enough for
 // 1e-13 in all integrals of its depths.
-type rules struct{ graded, middle, deep rule }
+type rules struct{ graded, shallow, middle, deep rule }
 
 func newRules() rules {
-	return rules{graded: gradedRule(), middle: plainRule(32), deep: plainRule(20)}
+	return rules{graded: gradedRule(), shallow: plainRule(32), middle: plainRule(20), deep: plainRule(12)}
 }
 
 // at picks the smallest rule that is enough at a depth in Er.
@@ -65,6 +71,8 @@ func (r *rules) at(depth float64) *rule {
 	case depth < 1:
 		return &r.graded
 	case depth < 6:
+		return &r.shallow
+	case depth < 20:
 		return &r.middle
 	}
 	return &r.deep
