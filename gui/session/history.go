@@ -80,7 +80,7 @@ func (s *Session) move(next *plan.Document) {
 	if next == s.doc.now {
 		return
 	}
-	s.doc.now = next
+	s.doc.now, s.notice = next, ""
 	s.stage = min(s.stage, len(next.Plan().Stages)-1)
 	s.overtake()
 	s.keepSoon()

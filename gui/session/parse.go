@@ -15,6 +15,7 @@ import (
 const (
 	longestInput = 200 // characters of one field
 	longestShown = 40  // characters of a typed text in a message
+	mostFactors  = 20
 	mostDecades  = 400 // decimal exponents beyond which no number is kept
 )
 
@@ -105,7 +106,7 @@ func (m Measure) example() string {
 func expression(text string) (value *big.Rat, rest, reason string) {
 	value = big.NewRat(1, 1)
 	divide := false
-	for {
+	for range mostFactors {
 		text = strings.TrimLeftFunc(text, unicode.IsSpace)
 		factor, after, reason := number(text)
 		if reason != "" {
@@ -130,6 +131,7 @@ func expression(text string) (value *big.Rat, rest, reason string) {
 		}
 		text = text[size:]
 	}
+	return nil, "", fmt.Sprintf("has more than %d factors", mostFactors)
 }
 
 func startsNumber(text string) bool {

@@ -46,13 +46,13 @@ func stageRow(s *report.Stage, lasts float64) StageRow {
 		Crosses:    crossings(s.Crosses),
 	}
 	if u := s.InteractionHz; u != nil {
-		row.Interaction = signedHertz.Fit(*u, bestUnit(*u), 10)
+		row.Interaction = withUnit(signedHertz.formatDigits(*u, bestUnit(*u), 4), bestUnit(*u))
 		if w := word("interaction_hz", *u); w != "" {
 			row.Interaction += ", " + w
 		}
 	}
 	if a := s.ScatteringLengthA0; a != nil {
-		row.Scattering = bohr.Fit(*a, "a0", 10)
+		row.Scattering = withUnit(bohr.formatDigits(*a, "a0", 4), "a0")
 	}
 	return row
 }

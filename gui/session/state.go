@@ -28,6 +28,7 @@ type State struct {
 	Report   *report.Report // the last good one; nil before the first
 	Judged   uint64         // counts good reports; a picture is old when this changed
 	Verdict  Verdict
+	Keys     PageKeys
 	Stale    bool // Report is older than Plan
 	Fading   bool // it has been for longer than a drag's delay: draw it dashed and soft
 	Busy     bool // a judgement runs or waits

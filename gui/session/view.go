@@ -38,6 +38,7 @@ func (s *Session) state() State {
 	if w.report != nil {
 		st.Rows = stageRows(w.report)
 		st.Verdict = s.verdict()
+		st.Keys = pageKeys(w.report, s.reported())
 	}
 	st.Unapplied = s.unapplied()
 	st.Preview, st.Track = w.preview.shown, w.track.track

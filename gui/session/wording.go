@@ -68,41 +68,75 @@ func (s *Session) AdviceFor(criterion string) (Advice, bool) {
 // advice words a change as a button: knob, from, to, verdict. The caller holds mu.
 func (s *Session) advice(a *report.Advice, verdict string) Advice {
 	out := Advice{Verdict: verdict, Set: a.Set}
-	var steps []string
+	steps := make([]adviceStep, len(a.Set))
 	for i, set := range a.Set {
-		step, from, to := s.step(set)
-		steps = append(steps, step)
-		if i == 0 {
-			out.Knob, out.From, out.To = knobAt(set.Path), from, to
-		}
+		steps[i] = s.step(set)
 	}
-	out.Text = strings.Join(steps, "; ")
+	if len(steps) > 0 {
+		out.Knob, out.From, out.To = knobAt(a.Set[0].Path), steps[0].from, steps[0].to
+	}
+	out.Text = joinSteps(steps)
 	if verdict != "" {
 		out.Text += ", " + verdict
 	}
 	return out
 }
 
-// step words one change: "Lower 'sheet' at 'lower': 45 → 31 mW".
-func (s *Session) step(set report.Set) (text, from, to string) {
+// adviceStep is one change in pieces: "Lower", "'sheet'", " at 'lower'", "45", "31
+// mW".
+type adviceStep struct {
+	verb, name, place string
+	from, bare, to    string // bare is from without its unit
+}
+
+// step takes one change apart.
+func (s *Session) step(set report.Set) adviceStep {
+	out := adviceStep{verb: "Set", name: s.placeOfPath(set.Path), to: fmt.Sprint(set.Value)}
 	stage, inStage := stageOf(set.Path)
 	p := s.doc.now.Plan()
 	value, isNumber := set.Value.(float64)
 	if !inStage || !isNumber || stage >= len(p.Stages) {
-		return fmt.Sprintf("Set %s to %v", s.placeOfPath(set.Path), set.Value), "", fmt.Sprint(set.Value)
+		return out
 	}
 	for _, e := range knobs(p, stage, s.factsOf(p).recoil) {
 		if e.ID != knobAt(set.Path) {
 			continue
 		}
 		unit := s.shownUnit(e)
-		from, to = e.measure.Fit(e.value, unit, 10), e.measure.Fit(value, unit, 10)
-		name := strings.TrimPrefix(e.Label, "Power ")
-		bare, _ := strings.CutSuffix(from, " "+Symbol(unit))
-		text = fmt.Sprintf("%s %s at '%s': %s → %s", verb(e.value, value), lowerFirst(name), s.stageName(stage), bare, to)
-		return text, from, to
+		out.verb = verb(e.value, value)
+		out.name = lowerFirst(strings.TrimPrefix(e.Label, "Power "))
+		out.place = " at '" + s.stageName(stage) + "'"
+		if p.Model != nil && stage == StartStage {
+			out.place = ""
+		}
+		out.from, out.to = e.measure.Fit(e.value, unit, 10), e.measure.Fit(value, unit, 10)
+		out.bare = strings.TrimSuffix(out.from, " "+Symbol(unit))
 	}
-	return fmt.Sprintf("Set %s to %v", set.Path, set.Value), "", fmt.Sprint(set.Value)
+	return out
+}
+
+// joinSteps writes the steps in a row; neighbours that differ only in the axis
+// become one: "Raise depth x, y at 'lower': 2 → 4 Er".
+func joinSteps(steps []adviceStep) string {
+	var joined []adviceStep
+	for _, step := range steps {
+		if n := len(joined); n > 0 {
+			last := &joined[n-1]
+			what, axis, many := strings.Cut(step.name, " ")
+			if many && strings.HasPrefix(last.name, what+" ") && last.verb == step.verb &&
+				last.place == step.place && last.from == step.from && last.to == step.to {
+				last.name += ", " + axis
+				continue
+			}
+			step.verb = strings.ToLower(step.verb)
+		}
+		joined = append(joined, step)
+	}
+	texts := make([]string, len(joined))
+	for i, step := range joined {
+		texts[i] = step.verb + " " + step.name + step.place + ": " + strings.TrimPrefix(step.bare+" → "+step.to, " → ")
+	}
+	return strings.Join(texts, "; ")
 }
 
 func (s *Session) shownUnit(e entry) string {
