@@ -1,0 +1,186 @@
+package gui
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/widget"
+)
+
+// Verdicts as the report writes them.
+const (
+	sealed = "sealed"
+	leaky  = "leaky"
+	astray = "astray"
+	open   = "open"
+)
+
+// Badge is the verdict as a shape: a bar under a whole lid where the energy is
+// bounded, under a split lid where it is drained, thinning into strips where it is
+// unbounded, and a lid with the state detached from it where that is astray. An
+// unknown verdict is a dashed outline. For a wanted T > 0 the bound is the floor,
+// and the shape hangs upside down.
+type Badge struct {
+	widget.BaseWidget
+
+	Verdict string
+	Floor   bool    // the bound that counts is the floor
+	Side    float32 // at 100 % text
+}
+
+var _ fyne.Accessible = (*Badge)(nil)
+
+// NewBadge returns a badge without a verdict; side is at 100 % text.
+func NewBadge(side float32) *Badge {
+	b := &Badge{Side: side}
+	b.ExtendBaseWidget(b)
+	return b
+}
+
+// set changes the shape.
+func (b *Badge) set(verdict string, floor bool) {
+	if b.Verdict != verdict || b.Floor != floor {
+		b.Verdict, b.Floor = verdict, floor
+		b.Refresh()
+	}
+}
+
+// AccessibilityLabel is the verdict.
+func (b *Badge) AccessibilityLabel() string { return b.Verdict }
+
+// AccessibilityRole is text.
+func (b *Badge) AccessibilityRole() fyne.AccessibleRole { return fyne.AccessibleRoleText }
+
+// CreateRenderer implements [fyne.Widget].
+func (b *Badge) CreateRenderer() fyne.WidgetRenderer {
+	b.ExtendBaseWidget(b)
+	return &badgeRenderer{badge: b}
+}
+
+type badgeRenderer struct {
+	badge *Badge
+	parts []fyne.CanvasObject
+}
+
+var _ fyne.WidgetRenderer = (*badgeRenderer)(nil)
+
+func (r *badgeRenderer) Destroy() {}
+
+func (r *badgeRenderer) Objects() []fyne.CanvasObject { return r.parts }
+
+func (r *badgeRenderer) MinSize() fyne.Size { return fyne.NewSquareSize(px(r.badge.Side)) }
+
+func (r *badgeRenderer) Refresh() {
+	r.Layout(r.badge.Size())
+	canvas.Refresh(r.badge)
+}
+
+// The shape is drawn on a square of 48 units, the bar 20 wide in its middle.
+const (
+	badgeUnits = 48
+	barLeft    = 14
+	barRight   = 34
+	barBottom  = 46
+	lidLeft    = 6 // 8 beyond the bar
+	lidRight   = 42
+	lidTop     = 10
+	lidDeep    = 4
+	lidTurn    = 8 // how far its ends turn inward
+)
+
+func (r *badgeRenderer) Layout(size fyne.Size) {
+	r.parts = nil
+	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, flip: r.badge.Floor, units: badgeUnits, add: func(o fyne.CanvasObject) {
+		r.parts = append(r.parts, o)
+	}}
+	switch r.badge.Verdict {
+	case sealed:
+		pen.bar(lidTop+lidDeep+2, barBottom, ColorBlue)
+		pen.lid(lidLeft, lidRight)
+	case leaky:
+		pen.bar(lidTop+lidDeep+2, barBottom, ColorYellow)
+		pen.splitLid()
+	case astray:
+		pen.bar(lidTop+lidDeep+2, 22, ColorBlue)
+		pen.lid(lidLeft, lidRight)
+		pen.diamond(24, 37, 8)
+	case open:
+		pen.bar(30, barBottom, ColorRed)
+		pen.strips()
+	default:
+		u := pen.unit
+		r.parts = dashed(fyne.NewPos(barLeft*u, lidTop*u), fyne.NewSize((barRight-barLeft)*u, (barBottom-lidTop)*u), 1, 3, 3, ColorSoftInk)
+	}
+}
+
+// pen adds shapes in units from the top of a square, turned over where flip is
+// set.
+type pen struct {
+	unit  float32
+	units float32
+	flip  bool
+	add   func(fyne.CanvasObject)
+}
+
+// rect fills a rectangle.
+func (p pen) rect(left, top, right, bottom float32, fill fyne.ThemeColorName) {
+	if p.flip {
+		top, bottom = p.units-bottom, p.units-top
+	}
+	p.add(filled(fyne.NewPos(left*p.unit, top*p.unit), fyne.NewSize((right-left)*p.unit, (bottom-top)*p.unit), fill))
+}
+
+// bar is a filled bar with an ink outline.
+func (p pen) bar(top, bottom float32, fill fyne.ThemeColorName) {
+	edge := lineNormal / p.unit
+	p.rect(barLeft, top, barRight, bottom, ColorInk)
+	p.rect(barLeft+edge, top+edge, barRight-edge, bottom-edge, fill)
+}
+
+// lid is a whole lid whose ends turn inward.
+func (p pen) lid(left, right float32) {
+	p.rect(left, lidTop, right, lidTop+lidDeep, ColorInk)
+	p.rect(left, lidTop, left+lidDeep, lidTop+lidTurn+lidDeep, ColorInk)
+	p.rect(right-lidDeep, lidTop, right, lidTop+lidTurn+lidDeep, ColorInk)
+}
+
+// splitLid is a lid with a gap of 12 and a stem that rises through it to an open
+// arrow.
+func (p pen) splitLid() {
+	p.rect(lidLeft, lidTop, 18, lidTop+lidDeep, ColorInk)
+	p.rect(30, lidTop, lidRight, lidTop+lidDeep, ColorInk)
+	p.rect(lidLeft, lidTop, lidLeft+lidDeep, lidTop+lidTurn+lidDeep, ColorInk)
+	p.rect(lidRight-lidDeep, lidTop, lidRight, lidTop+lidTurn+lidDeep, ColorInk)
+	p.line(24, lidTop+lidDeep+2, 24, 2, lineCurve)
+	p.line(19, 7, 24, 1.5, lineCurve)
+	p.line(29, 7, 24, 1.5, lineCurve)
+}
+
+// strips is the upper end of a bar without a bound: strips that thin out from 7 to
+// 1 while the gaps between them grow from 2 to 8, in proportion.
+func (p pen) strips() {
+	bottom := float32(30)
+	for i, deep := range []float32{6, 4.5, 3, 2} {
+		bottom -= 1.5 + float32(i)
+		p.rect(barLeft, bottom-deep, barRight, bottom, ColorRed)
+		bottom -= deep
+	}
+}
+
+// diamond is the mark of the state.
+func (p pen) diamond(x, y, half float32) {
+	p.line(x-half, y, x, y-half, lineCurve)
+	p.line(x, y-half, x+half, y, lineCurve)
+	p.line(x+half, y, x, y+half, lineCurve)
+	p.line(x, y+half, x-half, y, lineCurve)
+}
+
+func (p pen) line(x1, y1, x2, y2, width float32) {
+	if p.flip {
+		y1, y2 = p.units-y1, p.units-y2
+	}
+	o := canvas.NewLine(tint(ColorInk))
+	o.StrokeWidth = width
+	o.Position1 = fyne.NewPos(x1*p.unit, y1*p.unit)
+	o.Position2 = fyne.NewPos(x2*p.unit, y2*p.unit)
+	p.add(o)
+}

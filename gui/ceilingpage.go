@@ -1,0 +1,196 @@
+package gui
+
+import (
+	"slices"
+
+	"fyne.io/fyne/v2"
+
+	"hilltop/gui/session"
+)
+
+// CeilingPage shows what bounds the energy: the criteria with their margins and
+// what mends a broken one, the terms with floor and ceiling, and the stages.
+type CeilingPage struct {
+	tools    pageTools
+	sentence *Prose
+	criteria *Column
+	rows     []*CriterionRow
+	terms    *Grid
+	stages   *Grid
+	scroller *Scroller
+
+	termIDs     []string // of the rows of terms
+	stageIDs    []int    // of the rows of stages
+	stageTopics []string // of its columns
+}
+
+var _ Page = (*CeilingPage)(nil)
+
+func newCeilingPage(tools pageTools) *CeilingPage {
+	p := &CeilingPage{tools: tools, sentence: NewProse("", textSentence, 0).bold(), criteria: NewColumn(0, 0)}
+	p.terms = NewGrid([]GridColumn{{"Term, per atom", true}, {"Floor", false}, {"Ceiling", false}, {"", true}}, p.explainTerm)
+	p.terms.OnKey = tools.key
+	p.stages = NewGrid(nil, p.stageCell)
+	p.stages.OnKey = tools.key
+	p.scroller = NewScroller(NewColumn(space12, space16, p.sentence, p.criteria, p.terms, p.stages))
+	return p
+}
+
+// Name is that of the page.
+func (p *CeilingPage) Name() string { return "Ceiling" }
+
+// Object is the page.
+func (p *CeilingPage) Object() fyne.CanvasObject { return p.scroller }
+
+// KeyNumber is the bound that counts, per atom.
+func (p *CeilingPage) KeyNumber(s session.State) string { return s.Keys.Ceiling }
+
+// bound is the bound that counts, as it stands on the screen.
+func (p *CeilingPage) bound(s session.State) string {
+	total := s.Report.Ceiling.Total
+	bound := total.Ceiling
+	if isFloor(s) {
+		bound = total.Floor
+	}
+	return boundText(bound.Known, bound.Unbounded(), bound.Hz)
+}
+
+// isFloor reports whether the bound that counts is the floor.
+func isFloor(s session.State) bool { return s.Verdict.Aim == "positive" }
+
+// boundText is a bound as it stands on the screen.
+func boundText(known, unbounded bool, hz float64) string {
+	switch {
+	case !known:
+		return ""
+	case unbounded:
+		return "unbounded"
+	}
+	return quantity(hz, "Hz")
+}
+
+// Show shows a state.
+func (p *CeilingPage) Show(s session.State) {
+	p.sentence.Color = ColorInk
+	if s.Fading {
+		p.sentence.Color = ColorSoftInk
+	}
+	p.sentence.SetText(p.title(s))
+	if s.Report != nil {
+		p.showCriteria(s)
+		p.showTerms(s)
+		p.showStages(s)
+	}
+	p.scroller.Refresh()
+}
+
+// title says at which stage the energy is bounded and by what.
+func (p *CeilingPage) title(s session.State) string {
+	if s.Report == nil {
+		return "Nothing is judged yet."
+	}
+	begin := "The energy is "
+	if n := len(s.Report.Stages); n > 0 {
+		begin = "At the end of '" + s.Report.Stages[n-1].Name + "' the energy is "
+	}
+	side, word := "above", "ceiling"
+	if isFloor(s) {
+		side, word = "below", "floor"
+	}
+	number := p.bound(s)
+	if number == "unbounded" {
+		return begin + "unbounded from " + side + "."
+	}
+	return begin + "bounded from " + side + ": " + word + " " + number + " per atom."
+}
+
+func (p *CeilingPage) showCriteria(s session.State) {
+	list := s.Report.Ceiling.Criteria
+	for len(p.rows) < len(list) {
+		p.rows = append(p.rows, newCriterionRow(p.tools))
+	}
+	p.criteria.Objects = p.criteria.Objects[:0]
+	for i, c := range list {
+		shown := criterion{name: c.Name, detail: minusSigns(c.Detail), margin: quantity(c.Margin, c.Unit), verdict: sealed, floor: isFloor(s)}
+		if !c.Passed {
+			shown.verdict = c.Breaks
+			if advice, ok := p.tools.desk.AdviceFor(c.Name); ok && !s.Fading {
+				shown.advice = &advice
+			}
+		}
+		p.rows[i].set(shown)
+		p.criteria.Objects = append(p.criteria.Objects, p.rows[i])
+	}
+}
+
+func (p *CeilingPage) showTerms(s session.State) {
+	var rows []GridRow
+	p.termIDs = nil
+	for _, t := range s.Report.Ceiling.Terms {
+		p.termIDs = append(p.termIDs, t.Term)
+		rows = append(rows, GridRow{Cells: []string{
+			screenName(t.Term),
+			boundText(t.Floor.Known, t.Floor.Unbounded(), t.Floor.Hz),
+			boundText(t.Ceiling.Known, t.Ceiling.Unbounded(), t.Ceiling.Hz),
+			minusSigns(t.Reason),
+		}})
+	}
+	p.termIDs = append(p.termIDs, "total")
+	total := s.Report.Ceiling.Total
+	p.terms.Set(append(rows, GridRow{Chosen: true, Cells: []string{
+		screenName("total"),
+		boundText(total.Floor.Known, total.Floor.Unbounded(), total.Floor.Hz),
+		boundText(total.Ceiling.Known, total.Ceiling.Unbounded(), total.Ceiling.Hz),
+		"",
+	}}))
+}
+
+// stageColumns are those of the stage table.
+var stageColumns = []struct {
+	GridColumn
+	topic string
+	cell  func(session.StageRow) string
+}{
+	{GridColumn{"Stage, at its end", true}, "", func(r session.StageRow) string { return r.Name }},
+	{GridColumn{"Lasts", false}, "", func(r session.StageRow) string { return r.Duration }},
+	{GridColumn{"J", false}, "tunnelling_hz", func(r session.StageRow) string { return r.Tunnelling }},
+	{GridColumn{"U", false}, "interaction_hz", func(r session.StageRow) string { return r.Interaction }},
+	{GridColumn{"V per site²", false}, "curvature_hz", func(r session.StageRow) string { return r.Curvature }},
+	{GridColumn{"a", false}, "scattering_length_a0", func(r session.StageRow) string { return r.Scattering }},
+	{GridColumn{"Trap", false}, "trap_hz", func(r session.StageRow) string { return r.Trap }},
+	{GridColumn{"Crosses", true}, "", func(r session.StageRow) string { return r.Crosses }},
+}
+
+// showStages fills the stage table; a column in which nothing stands is left out.
+func (p *CeilingPage) showStages(s session.State) {
+	rows := make([]GridRow, len(s.Rows))
+	p.stageIDs, p.stageTopics, p.stages.Columns = nil, nil, nil
+	for i, r := range s.Rows {
+		rows[i].Chosen = r.Stage == s.Stage
+		p.stageIDs = append(p.stageIDs, r.Stage)
+	}
+	for _, column := range stageColumns {
+		if !slices.ContainsFunc(s.Rows, func(r session.StageRow) bool { return column.cell(r) != "" }) {
+			continue
+		}
+		p.stages.Columns = append(p.stages.Columns, column.GridColumn)
+		p.stageTopics = append(p.stageTopics, column.topic)
+		for i, r := range s.Rows {
+			rows[i].Cells = append(rows[i].Cells, column.cell(r))
+		}
+	}
+	p.stages.Set(rows)
+}
+
+// explainTerm explains the term of a row.
+func (p *CeilingPage) explainTerm(row, _ int) { p.tools.explain(p.termIDs[row]) }
+
+// stageCell selects the stage by its name; the other cells explain themselves.
+func (p *CeilingPage) stageCell(row, column int) {
+	if column == 0 {
+		p.tools.desk.SelectStage(p.stageIDs[row])
+		p.tools.echo()
+		return
+	}
+	p.tools.explain(p.stageTopics[column])
+}

@@ -1,0 +1,121 @@
+package gui
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/widget"
+)
+
+// Grid is a table of texts. Its columns are as wide as their texts where there is
+// room, else they wrap at spaces; where even that is too wide, every row is a card
+// with its cells below each other. The arrow keys move a frame over its cells;
+// Space, Enter or a click asks what a cell means.
+type Grid struct {
+	widget.BaseWidget
+	Columns []GridColumn
+	Rows    []GridRow
+	OnCell  func(row, column int)
+	OnKey   func(*fyne.KeyEvent) // keys that are not the grid's; may be nil
+
+	focused     bool
+	row, column int // of the frame
+}
+
+// GridColumn is a heading.
+type GridColumn struct {
+	Title string
+	Words bool // the cells are words: they begin at the left
+}
+
+// GridRow is one line of texts.
+type GridRow struct {
+	Cells  []string
+	Chosen bool // the row has its ground darkened and its first cell bold
+}
+
+var (
+	_ fyne.Widget        = (*Grid)(nil)
+	_ fyne.Tappable      = (*Grid)(nil)
+	_ fyne.Focusable     = (*Grid)(nil)
+	_ desktop.Cursorable = (*Grid)(nil)
+)
+
+// NewGrid returns a table without rows.
+func NewGrid(columns []GridColumn, cell func(row, column int)) *Grid {
+	g := &Grid{Columns: columns, OnCell: cell}
+	g.ExtendBaseWidget(g)
+	return g
+}
+
+// Set changes the rows.
+func (g *Grid) Set(rows []GridRow) {
+	g.Rows = rows
+	g.moveFrame(0, 0)
+	g.Refresh()
+}
+
+// moveFrame moves the frame by rows and columns, within the table.
+func (g *Grid) moveFrame(rows, columns int) {
+	g.row = max(0, min(g.row+rows, len(g.Rows)-1))
+	g.column = max(0, min(g.column+columns, len(g.Columns)-1))
+}
+
+// Tapped asks about the cell under the pointer.
+func (g *Grid) Tapped(e *fyne.PointEvent) {
+	for row, cells := range g.measure(g.Size().Width).cells {
+		for column, cell := range cells {
+			if cell.has(e.Position) {
+				g.row, g.column = row, column
+				g.Refresh()
+				g.OnCell(row, column)
+				return
+			}
+		}
+	}
+}
+
+// TypedKey moves the frame or asks about its cell.
+func (g *Grid) TypedKey(e *fyne.KeyEvent) {
+	switch e.Name {
+	case fyne.KeyUp:
+		g.moveFrame(-1, 0)
+	case fyne.KeyDown:
+		g.moveFrame(+1, 0)
+	case fyne.KeyLeft:
+		g.moveFrame(0, -1)
+	case fyne.KeyRight:
+		g.moveFrame(0, +1)
+	case fyne.KeySpace, fyne.KeyReturn, fyne.KeyEnter:
+		if len(g.Rows) > 0 {
+			g.OnCell(g.row, g.column)
+		}
+		return
+	default:
+		if g.OnKey != nil {
+			g.OnKey(e)
+		}
+		return
+	}
+	g.Refresh()
+}
+
+// TypedRune does nothing.
+func (g *Grid) TypedRune(rune) {}
+
+// FocusGained shows the frame.
+func (g *Grid) FocusGained() {
+	g.focused = true
+	g.Refresh()
+}
+
+// FocusLost hides the frame.
+func (g *Grid) FocusLost() {
+	g.focused = false
+	g.Refresh()
+}
+
+// Cursor is a hand.
+func (g *Grid) Cursor() desktop.Cursor { return desktop.PointerCursor }
+
+// HeightFor is that of the rows in a width.
+func (g *Grid) HeightFor(width float32) float32 { return g.measure(width).height }

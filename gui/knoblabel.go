@@ -1,0 +1,92 @@
+package gui
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/widget"
+)
+
+// KnobLabel is the name of a value with a soft line below it that says where the
+// value comes from, or its sign in words. A click leads to the field, a double
+// click resets it, a right click opens its menu.
+type KnobLabel struct {
+	widget.BaseWidget
+	OnTapped, OnDoubleTapped func()
+	OnMenu                   func(at fyne.Position)
+
+	name, origin *Prose
+}
+
+var (
+	_ fyne.Widget            = (*KnobLabel)(nil)
+	_ fyne.Tappable          = (*KnobLabel)(nil)
+	_ fyne.DoubleTappable    = (*KnobLabel)(nil)
+	_ fyne.SecondaryTappable = (*KnobLabel)(nil)
+)
+
+// NewKnobLabel returns an empty label.
+func NewKnobLabel(tapped, doubleTapped func(), menu func(fyne.Position)) *KnobLabel {
+	l := &KnobLabel{OnTapped: tapped, OnDoubleTapped: doubleTapped, OnMenu: menu,
+		name: NewProse("", textBody, 1), origin: NewProse("", textAxis, 1).soft()}
+	l.ExtendBaseWidget(l)
+	return l
+}
+
+// Set changes both lines.
+func (l *KnobLabel) Set(name, origin string) {
+	if l.name.Text != name || l.origin.Text != origin {
+		l.name.Text, l.origin.Text = name, origin
+		l.Refresh()
+	}
+}
+
+// Tapped leads to the field.
+func (l *KnobLabel) Tapped(*fyne.PointEvent) { l.OnTapped() }
+
+// DoubleTapped resets the field.
+func (l *KnobLabel) DoubleTapped(*fyne.PointEvent) { l.OnDoubleTapped() }
+
+// TappedSecondary opens the menu of the field.
+func (l *KnobLabel) TappedSecondary(e *fyne.PointEvent) { l.OnMenu(e.AbsolutePosition) }
+
+// CreateRenderer implements [fyne.Widget].
+func (l *KnobLabel) CreateRenderer() fyne.WidgetRenderer {
+	l.ExtendBaseWidget(l)
+	return &knobLabelRenderer{label: l}
+}
+
+type knobLabelRenderer struct{ label *KnobLabel }
+
+var _ fyne.WidgetRenderer = (*knobLabelRenderer)(nil)
+
+func (r *knobLabelRenderer) Destroy() {}
+
+func (r *knobLabelRenderer) Objects() []fyne.CanvasObject {
+	return []fyne.CanvasObject{r.label.name, r.label.origin}
+}
+
+func (r *knobLabelRenderer) MinSize() fyne.Size {
+	name, origin := r.label.name, r.label.origin
+	return fyne.NewSize(max(name.Width(), origin.Width()), name.lineHeight()+origin.lineHeight())
+}
+
+func (r *knobLabelRenderer) Refresh() {
+	r.Layout(r.label.Size())
+	r.label.name.Refresh()
+	r.label.origin.Refresh()
+	canvas.Refresh(r.label)
+}
+
+// Layout centres the lines; an empty second one takes no room.
+func (r *knobLabelRenderer) Layout(size fyne.Size) {
+	name, origin := r.label.name, r.label.origin
+	total := name.lineHeight()
+	if origin.Text != "" {
+		total += origin.lineHeight()
+	}
+	top := (size.Height - total) / 2
+	name.Move(fyne.NewPos(0, top))
+	name.Resize(fyne.NewSize(size.Width, name.lineHeight()))
+	origin.Move(fyne.NewPos(0, top+name.lineHeight()))
+	origin.Resize(fyne.NewSize(size.Width, origin.lineHeight()))
+}

@@ -1,0 +1,195 @@
+package gui
+
+import (
+	"errors"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+
+	"hilltop/assets"
+	"hilltop/gui/session"
+)
+
+// Options of a window. The zero value opens the demo plan, in what the desktop
+// prefers.
+type Options struct {
+	Path      string // of the plan to open; "" for the demo
+	Size      fyne.Size
+	Variant   Variant      // "" for what was chosen last
+	TextScale float32      // 0 for what was chosen last
+	Page      string       // name of the page to begin with; "" for the first
+	Folder    string       // for recovery and recent files; "" for none
+	Post      func(func()) // nil for [Post]
+}
+
+// DemoPlan is the template that a window without a plan opens.
+const DemoPlan = "skerry-demo"
+
+// Window is the one window of the program. Its methods run on the toolkit's
+// goroutine.
+type Window struct {
+	app     fyne.App
+	window  fyne.Window
+	desk    *session.Session
+	state   session.State
+	look    look
+	metrics Metrics
+	answers answers
+
+	bar        *VerdictBar
+	column     *KnobColumn
+	drawer     *Button
+	drawerOpen bool
+	pages      []Page
+	page       int
+	places     *PageSwitch
+	sheet      *fyne.Container
+	strip      *Strip
+	status     *StatusLine
+	content    *fyne.Container
+	menu       menus
+}
+
+// New opens a window of an application and shows a plan. Run the application, and
+// then [Window.Close].
+func New(app fyne.App, opt Options) *Window {
+	w := &Window{app: app, window: app.NewWindow("Hilltop")}
+	w.look = w.firstLook(opt)
+	w.wear(w.look)
+	if opt.Post == nil {
+		opt.Post = Post
+	}
+	w.desk = session.New(session.Options{Post: opt.Post, Show: w.Show, Folder: opt.Folder})
+	w.build()
+	w.window.SetIcon(fyne.NewStaticResource("icon.png", assets.Icon()))
+	w.window.SetPadded(false)
+	w.window.SetContent(w.content)
+	w.buildMenu()
+	w.window.Canvas().SetOnTypedKey(w.key)
+	w.window.SetCloseIntercept(w.askToClose)
+	w.window.SetOnDropped(w.dropped)
+	if opt.Size.IsZero() {
+		opt.Size = fyne.NewSize(1280, 800)
+	}
+	w.window.Resize(opt.Size)
+	w.openFirst(opt.Path)
+	w.choosePage(w.pageNamed(opt.Page))
+	w.Echo()
+	return w
+}
+
+// build makes the parts.
+func (w *Window) build() {
+	w.bar = NewVerdictBar(w.apply, func() { w.desk.Retry(); w.Echo() }, w.key)
+	w.column = NewKnobColumn(w.desk, ColumnEvents{Echo: w.Echo, Leave: w.leave, Menu: w.fieldMenu, Key: w.key, Failed: w.say})
+	w.drawer = NewButton("Knobs (F2)", w.toggleDrawer)
+	w.drawer.OnKey = w.key
+	w.strip = NewStrip(w.arrange)
+	w.status = NewStatusLine(func() { w.desk.Stop(); w.Echo() })
+	tools := pageTools{desk: w.desk, explain: w.explain, apply: w.apply, echo: w.Echo, key: w.key}
+	w.pages = []Page{newCeilingPage(tools)}
+	w.places = NewPageSwitch(w.choosePage, w.key)
+	w.sheet = container.NewStack()
+	for _, p := range w.pages {
+		w.sheet.Add(p.Object())
+	}
+	w.content = container.New(&frame{w}, w.bar, w.column, w.drawer, w.places, w.sheet, w.strip, w.status)
+}
+
+// Show shows a state, unless a newer one is shown already.
+func (w *Window) Show(s session.State) {
+	if s.Number < w.state.Number {
+		return
+	}
+	w.state = s
+	w.bar.Set(s)
+	w.column.Set(s)
+	w.status.Set(s)
+	w.showPages()
+	w.window.SetTitle(title(s))
+	w.refreshMenu()
+	w.answer(s)
+}
+
+// Echo shows what an action of the user has made of the state, in this frame.
+func (w *Window) Echo() { w.Show(w.desk.State()) }
+
+// title is that of the window: the document first, since lists of windows cut the
+// end.
+func title(s session.State) string {
+	if s.Plan == nil {
+		return "Hilltop"
+	}
+	mark := ""
+	if s.Dirty {
+		mark = " (edited)"
+	}
+	return s.Name + mark + " - Hilltop"
+}
+
+func (w *Window) showPages() {
+	cells := make([]PageCell, len(w.pages))
+	for i, p := range w.pages {
+		cells[i] = PageCell{p.Name(), p.KeyNumber(w.state)}
+	}
+	w.places.Set(cells, w.page)
+	w.pages[w.page].Show(w.state)
+}
+
+// choosePage turns to a page.
+func (w *Window) choosePage(i int) {
+	w.page = i
+	for k, p := range w.pages {
+		show(p.Object(), k == i)
+	}
+	w.showPages()
+}
+
+// pageNamed returns the index of a page, 0 for a name that no page has.
+func (w *Window) pageNamed(name string) int {
+	for i, p := range w.pages {
+		if p.Name() == name {
+			return i
+		}
+	}
+	return 0
+}
+
+// apply takes an advice and leads to the field it changes.
+func (w *Window) apply(a session.Advice) {
+	w.did(w.desk.Apply(a))
+	w.column.Reveal(w.state.Touched)
+}
+
+// did shows what became of an action: the new state, and why it was refused. A
+// refused text needs no word in the status line, since it has its reason below it.
+func (w *Window) did(err error) {
+	w.column.Drop()
+	w.Echo()
+	w.say(err)
+}
+
+// say puts an error into the status line, or clears it after an action that went
+// well.
+func (w *Window) say(err error) {
+	var input *session.InputError
+	if err == nil || errors.As(err, &input) {
+		w.status.Say("")
+		return
+	}
+	w.status.Say(err.Error())
+}
+
+// explain opens the strip on a topic, if there is something to say about it.
+func (w *Window) explain(topic string) {
+	if e, ok := w.desk.Explain(topic); ok {
+		w.strip.Explain(topic, e)
+		w.arrange()
+	}
+}
+
+// Native returns the toolkit's window.
+func (w *Window) Native() fyne.Window { return w.window }
+
+// Close ends the work behind the window, and waits for it.
+func (w *Window) Close() { w.desk.Close() }
