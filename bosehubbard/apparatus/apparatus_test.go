@@ -104,6 +104,17 @@ func TestNumbersOfThePublishedFlip(t *testing.T) {
 	near(t, "tilt of 87Rb at 1064 nm, Hz per half wavelength", rb.Model.Axes[2].Tilt, 1136.30, 0.1)
 }
 
+// TestCoilsCurve: B” = 10 G/cm^2 on 39K at 402.5 G pulls at 5.906 Hz along the
+// axis and pushes at 4.176 Hz across it (calculated outside this project from the
+// moment of 0.9606 muB); a high-field seeker flees the axial minimum of |B|.
+func TestCoilsCurve(t *testing.T) {
+	a := cubic(t, "39K", 740e-9, 150e-6, 0)
+	a.Field.CurvaturePerField = 10 / 402.5 * 1e4
+	p := at(t, a, Settings{Field: 402.5 * si.Gauss})
+	near(t, "along the field, Hz", p.Trap[2], -5.906, 2e-3)
+	near(t, "across the field, Hz", p.Trap[0], 4.176, 2e-3)
+}
+
 // TestInteractionIsAbsentInShallowLattices, and J of the free band is 2/pi^2 Er
 // (derived: -(1/2) of the integral of q^2 cos(pi q)).
 func TestInteractionIsAbsentInShallowLattices(t *testing.T) {

@@ -209,3 +209,31 @@ func model(sites []int, atoms int, j, u, v float64) *System {
 	}
 	return s
 }
+
+// TestOneBandCountsEverything: gap less both widths, |U| and the tilt, by hand:
+// 27782 - 2(970+902) - 984 - 352.7 Hz.
+func TestOneBandCountsEverything(t *testing.T) {
+	c, ok := assess(t, flip(Negative)).Criterion("one_band")
+	if want := 27782 - 2*(970+902) - 984 - 352.7; !ok || math.Abs(c.Margin-want) > 1e-9 {
+		t.Errorf("margin %g, want %g", c.Margin, want)
+	}
+}
+
+// TestResonancesNarrow: the k-th resonance is 4J (2J/F)^(k-1) wide to each side
+// (derived), with J = 16.4 and F = 352.7: 65.6, 6.10 and 0.567 Hz.
+func TestResonancesNarrow(t *testing.T) {
+	for k, width := range []float64{65.6, 6.1006, 0.56733} {
+		for _, side := range []float64{-1, 1} {
+			for _, tc := range []struct {
+				off    float64
+				passes bool
+			}{{0.99 * width, false}, {1.01 * width, true}} {
+				s := flip(Negative)
+				s.Interaction = -(float64(k+1)*352.7 + side*tc.off)
+				if c, _ := assess(t, s).Criterion("layers"); c.Passed != tc.passes {
+					t.Errorf("|U| %g Hz from %d F: passed %v, %s", side*tc.off, k+1, c.Passed, c.Detail)
+				}
+			}
+		}
+	}
+}

@@ -1,7 +1,6 @@
 package ceiling
 
 import (
-	"fmt"
 	"math"
 
 	"hilltop/bosehubbard/si"
@@ -109,10 +108,10 @@ func (s *System) wanted(v float64) float64 {
 func (s *System) interactionCriterion() Criterion {
 	if !s.HasInteraction {
 		a := s.ScatteringLength / si.BohrRadius
-		return criterion("interaction", s.wanted(a), "a0", Open, fmt.Sprintf("a = %+.4g a0; too shallow for an on-site U", a))
+		return criterion("interaction", s.wanted(a), "a0", Open, say("a = %v a0; too shallow for an on-site U", plus(a)))
 	}
 	return criterion("interaction", s.wanted(s.Interaction), "Hz", Open,
-		fmt.Sprintf("U = %+.4g Hz, %s", s.Interaction, attraction(s.Interaction)))
+		say("U = %v Hz, %v", plus(s.Interaction), attraction(s.Interaction)))
 }
 
 func attraction(u float64) string {
@@ -133,7 +132,7 @@ func (s *System) trapCriteria(motions []Motion) []Criterion {
 		if motions[i] != Moving {
 			continue
 		}
-		detail := fmt.Sprintf("%s %+.4g %s along %s", confinement(value), value, unit, a.Name)
+		detail := say("%v %v %v along %v", confinement(value), plus(value), unit, a.Name)
 		list = append(list, criterion("trap_"+a.Name, s.wanted(value), unit, Open, detail))
 	}
 	return list
@@ -175,7 +174,7 @@ func (s *System) tilt(motions []Motion) (Criterion, bool) {
 			room = -math.Abs(a.Tilt)
 		}
 		if room < margin {
-			margin, detail = room, fmt.Sprintf("%.4g Hz per site along %s against %+.4g %s", a.Tilt, a.Name, value, unit)
+			margin, detail = room, say("%v Hz per site along %v against %v %v", a.Tilt, a.Name, plus(value), unit)
 		}
 	}
 	if !any {
@@ -201,7 +200,7 @@ func (s *System) localisation(motions []Motion) (margin float64, detail string) 
 		}
 		if room < margin {
 			margin = room
-			detail = fmt.Sprintf("%.4g Hz per site along %s, which is %s", a.Tilt, a.Name, motions[i])
+			detail = say("%v Hz per site along %v, which is %v", a.Tilt, a.Name, motions[i])
 		}
 	}
 	return margin, detail
@@ -224,7 +223,7 @@ func (s *System) oneBand(motions []Motion) (Criterion, bool) {
 		return Criterion{}, false
 	}
 	return criterion("one_band", gap-need, "Hz", Leaky,
-		fmt.Sprintf("gap %.4g Hz against band widths + |U| + tilt = %.4g Hz", gap, need)), true
+		say("gap %v Hz against band widths + |U| + tilt = %v Hz", gap, need)), true
 }
 
 // held: V = 0 is bounded but holds nothing, unless a box has walls. An axis
@@ -243,7 +242,7 @@ func (s *System) held(motions []Motion) (Criterion, bool) {
 	if name == "" {
 		return Criterion{}, false
 	}
-	c := criterion("held", weakest, "Hz", Leaky, fmt.Sprintf("weakest along %s, |f| = %.4g Hz", name, weakest))
+	c := criterion("held", weakest, "Hz", Leaky, say("weakest along %v, |f| = %v Hz", name, weakest))
 	c.Passed = weakest > 0
 	return c, true
 }
@@ -274,5 +273,5 @@ func (s *System) edge(motions []Motion) (Criterion, bool, error) {
 		return Criterion{}, false, err
 	}
 	return criterion("edge", drop-need, "Hz", Leaky,
-		fmt.Sprintf("%.4g Hz to the edge of the beams against 2zJ + |U| = %.4g Hz", drop, need)), true, nil
+		say("%v Hz to the edge of the beams against 2zJ + |U| = %v Hz", drop, need)), true, nil
 }

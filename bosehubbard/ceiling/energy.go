@@ -1,7 +1,5 @@
 package ceiling
 
-import "fmt"
-
 // energy: the state must lie on the wanted side of infinite temperature. At
 // beta = 0 bosons at mean filling n have <n(n-1)> = 2 n^2 and no kinetic energy,
 // so T < 0 wants
@@ -36,7 +34,7 @@ func (s *System) energy([]Motion) (Criterion, bool) {
 	margin := -s.wanted(have - infinite)
 	return Criterion{
 		Name: "energy", Passed: margin > 0, Margin: margin, Unit: "Hz", Breaks: Astray,
-		Detail: fmt.Sprintf("energy %.4g Hz per site against %.4g Hz at infinite temperature", have, infinite),
+		Detail: say("energy %v Hz per site against %v Hz at infinite temperature", have, infinite),
 	}, true
 }
 

@@ -1,7 +1,6 @@
 package ceiling
 
 import (
-	"fmt"
 	"math"
 )
 
@@ -51,14 +50,14 @@ func (s *System) layers(motions []Motion) (Criterion, bool) {
 			continue
 		}
 		room, k := resonance(a, s.Interaction)
-		keep(criterion("layers", room, "Hz", Leaky, fmt.Sprintf(
-			"|U| = %.4g Hz stands %.4g Hz clear of %d x %.4g Hz, the tilt along %s", math.Abs(s.Interaction), room, k, math.Abs(a.Tilt), a.Name)))
+		keep(criterion("layers", room, "Hz", Leaky, say(
+			"|U| = %v Hz stands %v Hz clear of %v x %v Hz, the tilt along %v", math.Abs(s.Interaction), room, k, math.Abs(a.Tilt), a.Name)))
 		if zj == 0 {
 			continue
 		}
 		leak := LeakOf(a, plane, zj, s.Hold)
-		keep(criterion("layers", (1-1/math.E)*zj-leak.Drift, "Hz", Leaky, fmt.Sprintf(
-			"hops along %s at %.2g to %.2g per s drift by %.3g Hz in the hold, room is %.4g Hz", a.Name, leak.Slow, leak.Fast, leak.Drift, (1-1/math.E)*zj)))
+		keep(criterion("layers", (1-1/math.E)*zj-leak.Drift, "Hz", Leaky, say(
+			"hops along %v at %v to %v per s drift by %v Hz in the hold, room is %v Hz", a.Name, leak.Slow, leak.Fast, leak.Drift, (1-1/math.E)*zj)))
 	}
 	return c, any
 }

@@ -1,9 +1,6 @@
 package ceiling
 
-import (
-	"fmt"
-	"math"
-)
+import "math"
 
 // Term is one term of the energy with its bounds.
 type Term struct {
@@ -32,9 +29,9 @@ func (s *System) terms(motions []Motion) ([]Term, Interval) {
 
 func (s *System) stillness(a Axis, m Motion) string {
 	if m == Layered {
-		return fmt.Sprintf("layered: tilt %.4g Hz per site is at least 4J = %.4g Hz", math.Abs(a.Tilt), 4*math.Abs(a.Tunnelling))
+		return say("layered: tilt %v Hz per site is at least 4J = %v Hz", math.Abs(a.Tilt), 4*math.Abs(a.Tunnelling))
 	}
-	return fmt.Sprintf("frozen: J hold / ħ = %.2g is at most 0.1", 2*math.Pi*math.Abs(a.Tunnelling)*s.Hold)
+	return say("frozen: J hold / ħ = %v is at most 0.1", 2*math.Pi*math.Abs(a.Tunnelling)*s.Hold)
 }
 
 // kinetic sums the band edges over the moving axes.

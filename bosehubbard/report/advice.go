@@ -10,6 +10,7 @@ import (
 	"hilltop/bosehubbard/aim"
 	"hilltop/bosehubbard/apparatus"
 	"hilltop/bosehubbard/ceiling"
+	"hilltop/bosehubbard/num/digits"
 	"hilltop/bosehubbard/optics"
 	"hilltop/bosehubbard/plan"
 	"hilltop/bosehubbard/si"
@@ -211,13 +212,13 @@ func step(m aim.Move) string {
 	}
 	switch m.Knob.Kind {
 	case aim.Power:
-		return fmt.Sprintf("%s '%s' to %s mW", verb, strings.TrimPrefix(m.Knob.Name, "power_w/"), number(m.To*1e3, 3))
+		return fmt.Sprintf("%s '%s' to %s mW", verb, strings.TrimPrefix(m.Knob.Name, "power_w/"), digits.Format(m.To*1e3, 3))
 	case aim.Depth:
-		return fmt.Sprintf("%s depth %v to %s Er", verb, optics.Axis(m.Knob.Axis), number(m.To, 3))
+		return fmt.Sprintf("%s depth %v to %s Er", verb, optics.Axis(m.Knob.Axis), digits.Format(m.To, 3))
 	case aim.Field:
-		return fmt.Sprintf("%s the field to %s G", verb, number(m.To, 6))
+		return fmt.Sprintf("%s the field to %s G", verb, digits.Format(m.To, 6))
 	case aim.Interaction:
-		return fmt.Sprintf("Set U to %s Hz", signed(m.To, 4))
+		return fmt.Sprintf("Set U to %s Hz", digits.Signed(m.To, 4))
 	}
-	return fmt.Sprintf("Set V along %v to %s Hz", optics.Axis(m.Knob.Axis), signed(m.To, 4))
+	return fmt.Sprintf("Set V along %v to %s Hz", optics.Axis(m.Knob.Axis), digits.Signed(m.To, 4))
 }

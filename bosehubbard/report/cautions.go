@@ -6,6 +6,7 @@ import (
 
 	"hilltop/bosehubbard/apparatus"
 	"hilltop/bosehubbard/ceiling"
+	"hilltop/bosehubbard/num/digits"
 	"hilltop/bosehubbard/si"
 )
 
@@ -16,7 +17,7 @@ func (b *bench) cautions(r *Report, end *apparatus.Point, a *ceiling.Assessment)
 		for _, c := range stage.Crosses {
 			if c.Kind == "pole" {
 				r.caution("pole_crossed", "Stage '%s' crosses a pole of the scattering length at %s G: doubly occupied sites are lost there.",
-					stage.Name, number(c.FieldG, 5))
+					stage.Name, digits.Format(c.FieldG, 5))
 			}
 		}
 	}
@@ -65,7 +66,7 @@ func (b *bench) gravityCautions(r *Report) error {
 		if !held {
 			r.caution("falls", "At '%s' the beams do not hold the atoms against gravity along %v.", name, b.apparatus.Gravity)
 		} else if sag > b.narrowest()/4 {
-			r.caution("sag", "At '%s' gravity pulls the cloud %s µm below the beam centre; traps are given at the centre.", name, number(sag*1e6, 2))
+			r.caution("sag", "At '%s' gravity pulls the cloud %s µm below the beam centre; traps are given at the centre.", name, digits.Format(sag*1e6, 2))
 		}
 	}
 	return nil
@@ -89,6 +90,6 @@ func (b *bench) wanderCaution(r *Report, end *apparatus.Point, a *ceiling.Assess
 		}
 		shift := si.JouleFromHz(terms.Tilt) / end.Spacing[i] / (b.apparatus.Species.Mass * math.Abs(end.OmegaSquared[i]))
 		r.caution("summit_shift", "The tilt of %s Hz per site moves the summit along %s by %s µm; the total counts from there.",
-			number(terms.Tilt, 3), "xyz"[i:i+1], number(math.Abs(shift)*1e6, 3))
+			digits.Format(terms.Tilt, 3), "xyz"[i:i+1], digits.Format(math.Abs(shift)*1e6, 3))
 	}
 }

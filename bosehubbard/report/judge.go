@@ -83,7 +83,7 @@ func (r *Report) fill(a *ceiling.Assessment) {
 	for _, c := range a.Criteria {
 		r.Ceiling.Criteria = append(r.Ceiling.Criteria, Criterion{
 			Name: c.Name, Passed: c.Passed, Margin: c.Margin, Unit: c.Unit,
-			Breaks: string(c.Breaks), Detail: typeset(c.Detail),
+			Breaks: string(c.Breaks), Detail: c.Detail,
 		})
 	}
 }

@@ -11,7 +11,11 @@ import (
 	"unicode/utf8"
 
 	"hilltop/assets"
+	"hilltop/bosehubbard"
+	"hilltop/bosehubbard/apparatus"
+	"hilltop/bosehubbard/atom"
 	"hilltop/bosehubbard/plan"
+	"hilltop/bosehubbard/si"
 	"hilltop/testdata"
 )
 
@@ -277,5 +281,46 @@ func BenchmarkKnob(b *testing.B) {
 				}
 			}
 		})
+	}
+}
+
+// TestTrapScalesWithTheDimension: V N^(2/d) stays, so halving the atoms doubles V
+// in a plane and takes it fourfold on a chain.
+func TestTrapScalesWithTheDimension(t *testing.T) {
+	for d, want := range map[int]float64{1: 4, 2: 2, 3: math.Cbrt(4)} {
+		m := bosehubbard.Model{Axes: make([]bosehubbard.AxisTerms, d)}
+		m.Axes[0].Curvature = -0.1
+		if got := scaled(m, 2).Axes[0].Curvature / m.Axes[0].Curvature; math.Abs(got-want) > 1e-12 {
+			t.Errorf("%d axes: V grows %g times, want %g", d, got, want)
+		}
+	}
+}
+
+// TestFieldsWithoutAPoleComeFirst: in 39K several fields give the same a; the
+// first offered must be reachable without crossing a pole, where there is one.
+func TestFieldsWithoutAPoleComeFirst(t *testing.T) {
+	d, err := shipped(t, "skerry-demo").With("/scattering", nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	b, err := newBench(d.Plan(), apparatus.NewWorkspace())
+	if err != nil {
+		t.Fatal(err)
+	}
+	var end apparatus.Point
+	if err := b.apparatus.At(b.workspace, &end, b.sequence.Start); err != nil {
+		t.Fatal(err)
+	}
+	for _, scale := range []float64{-0.02, -0.05, -0.07, 0.5} {
+		fields := b.fieldsFor(&end)(scale)
+		if len(fields) == 0 {
+			t.Errorf("no field for %g times a", scale)
+			continue
+		}
+		for _, c := range b.apparatus.Scattering.Crossings([]float64{end.Field, fields[0] * si.Gauss}) {
+			if c.Kind == atom.Pole {
+				t.Errorf("%g times a: %g G lies behind the pole at %g G; candidates %v", scale, fields[0], c.Field/si.Gauss, fields)
+			}
+		}
 	}
 }

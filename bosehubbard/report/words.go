@@ -2,44 +2,18 @@ package report
 
 import (
 	"fmt"
-	"regexp"
-	"strconv"
 	"strings"
 	"unicode/utf8"
+
+	"hilltop/bosehubbard/num/digits"
 )
-
-// number writes v with so many significant digits, no exponent between 1e-4 and
-// 1e6, and a true minus sign.
-func number(v float64, digits int) string {
-	text := strconv.FormatFloat(v, 'g', digits, 64)
-	if strings.ContainsRune(text, 'e') {
-		if a := max(v, -v); a >= 1e-4 && a < 1e7 {
-			text = strconv.FormatFloat(v, 'f', 0, 64)
-		}
-	}
-	return strings.Replace(text, "-", "−", 1)
-}
-
-// minus matches a hyphen that stands for a minus sign.
-var minus = regexp.MustCompile(`(^|[ =(])-(\d)`)
-
-// typeset gives the numbers in a line of text true minus signs.
-func typeset(text string) string { return minus.ReplaceAllString(text, "$1−$2") }
 
 // duration writes a time given in ms, in s where it is long.
 func duration(ms float64) string {
 	if ms >= 1e4 {
-		return number(ms/1e3, 3) + " s"
+		return digits.Format(ms/1e3, 3) + " s"
 	}
-	return number(ms, 3) + " ms"
-}
-
-// signed is number with a plus sign where v is positive.
-func signed(v float64, digits int) string {
-	if v > 0 {
-		return "+" + number(v, digits)
-	}
-	return number(v, digits)
+	return digits.Format(ms, 3) + " ms"
 }
 
 // sentenceLength is the most runes the verdict bar shows.
@@ -64,7 +38,7 @@ func (r *Report) sealedSentence() string {
 	end := r.last()
 	lives := duration(r.HoldMS)
 	if end != nil && end.TunnellingTimeMS != nil && *end.TunnellingTimeMS > 0 {
-		lives += ", " + number(r.HoldMS / *end.TunnellingTimeMS, 3) + " ħ/J"
+		lives += ", " + digits.Format(r.HoldMS / *end.TunnellingTimeMS, 3) + " ħ/J"
 	}
 	side := "above"
 	if r.AimSign == "positive" {
@@ -116,19 +90,19 @@ func (r *Report) last() *Stage {
 // phrase says what a broken criterion means, with its number.
 func (r *Report) phrase(c *Criterion) string {
 	positive := r.AimSign == "positive"
-	amount := number(-c.Margin, 3) + " " + unitWords[c.Unit]
+	amount := digits.Format(-c.Margin, 3) + " " + unitWords[c.Unit]
 	switch c.Name {
 	case "interaction":
 		if positive {
-			return "atoms attract (" + signed(c.Margin, 3) + " " + unitWords[c.Unit] + "), no floor"
+			return "atoms attract (" + digits.Signed(c.Margin, 3) + " " + unitWords[c.Unit] + "), no floor"
 		}
-		return "atoms repel (" + signed(-c.Margin, 3) + " " + unitWords[c.Unit] + "), no ceiling"
+		return "atoms repel (" + digits.Signed(-c.Margin, 3) + " " + unitWords[c.Unit] + "), no ceiling"
 	case "trap_x", "trap_y", "trap_z":
 		axis := c.Name[len(c.Name)-1:]
 		if positive {
-			return "trap pushes outwards along " + axis + " (" + signed(c.Margin, 3) + " " + unitWords[c.Unit] + ")"
+			return "trap pushes outwards along " + axis + " (" + digits.Signed(c.Margin, 3) + " " + unitWords[c.Unit] + ")"
 		}
-		return "trap still confines along " + axis + " (" + signed(-c.Margin, 3) + " " + unitWords[c.Unit] + ")"
+		return "trap still confines along " + axis + " (" + digits.Signed(-c.Margin, 3) + " " + unitWords[c.Unit] + ")"
 	case "tilt":
 		return "a tilted axis moves with no curvature to stop it"
 	case "one_band":

@@ -8,6 +8,7 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"hilltop/bosehubbard/num/digits"
 	"hilltop/bosehubbard/plan"
 	"hilltop/bosehubbard/report"
 )
@@ -84,7 +85,7 @@ func writeReport(w io.Writer, r *report.Report) error {
 	return err
 }
 
-func figure(v float64) string { return fmt.Sprintf("%.4g", v) }
+func figure(v float64) string { return digits.Format(v, 4) }
 
 func list(values []float64) string {
 	if len(values) == 0 {
@@ -114,7 +115,7 @@ func bound(b report.Bound) string {
 func crossings(list []report.Crossing) string {
 	words := make([]string, len(list))
 	for i, c := range list {
-		words[i] = fmt.Sprintf("%s %.5g G", c.Kind, c.FieldG)
+		words[i] = fmt.Sprintf("%s %s G", c.Kind, digits.Format(c.FieldG, 5))
 	}
 	return strings.Join(words, ", ")
 }
