@@ -1,5 +1,7 @@
 package optics
 
+import "math"
+
 // Entry is what one beam or coil adds to the trap.
 type Entry struct {
 	Source       string     // name of the beam, "lattice x", "field"
@@ -19,4 +21,16 @@ func (b Budget) Sum() [3]float64 {
 		}
 	}
 	return sum
+}
+
+// SignedFrequency returns sign(w2) sqrt|w2| / 2 pi in Hz for w2 in rad^2/s^2:
+// negative for an anti-trap.
+func SignedFrequency(omegaSquared float64) float64 {
+	return math.Copysign(math.Sqrt(math.Abs(omegaSquared)), omegaSquared) / (2 * math.Pi)
+}
+
+// OmegaSquared is the inverse of SignedFrequency, in rad^2/s^2.
+func OmegaSquared(signedHz float64) float64 {
+	omega := 2 * math.Pi * signedHz
+	return omega * math.Abs(omega)
 }

@@ -14,9 +14,12 @@ type MagneticField struct {
 	CurvaturePerField float64 // B''/B along the axis, 1/m^2
 }
 
-// Curvature returns d2U/dx_i^2, J/m^2, of U = -mu |B|: -mu B” along the axis and
-// +mu B”/2 across it, for a curl-free and divergence-free field with a large
-// bias. moment is mu in J/T, field in T.
+// Curvature returns the second derivatives of U = -mu |B|, J/m^2: -mu b along the
+// axis and +mu b/2 across it, where b is the second derivative of |B| along the
+// axis. moment is mu in J/T, field in T.
+//
+// Across the axis the bias is large and the gradients small, so |B| is the
+// component along the axis; mu is taken as constant over the cloud.
 //
 // Source: derived from Laplace's equation.
 func (m MagneticField) Curvature(moment, field float64) [3]float64 {
