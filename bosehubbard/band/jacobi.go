@@ -27,41 +27,30 @@ type search struct {
 // Source: inertia of the twisted factorization; Parlett, The Symmetric
 // Eigenvalue Problem (1998), chapter 7.
 func (t jacobi) twist(e float64, m int, z []float64) (f, norm2 float64, nodes int) {
+	fromTop, above := t.eliminate(e, 0, m, 1, z)
+	fromBottom, below := t.eliminate(e, len(t.diag)-1, m, -1, z)
+	f = t.diag[m] - e + fromTop + fromBottom
+	return f, unroll(z, m), above + below
+}
+
+// eliminate factors T - e from row i towards row m, leaves in z the ratio of each
+// entry of the vector to the next one, and returns what it takes off the pivot of
+// row m and the number of negative pivots.
+func (t jacobi) eliminate(e float64, i, m, step int, z []float64) (pull float64, negative int) {
 	const tiny = 1e-150 // keeps a vanishing pivot from dividing by zero
-	n := len(t.diag)
-	f = t.diag[m] - e
-	d := t.diag[0] - e
-	for i := range m {
-		if math.Abs(d) < tiny {
-			d = -tiny
+	for ; i != m; i += step {
+		pivot := t.diag[i] - e + pull
+		if math.Abs(pivot) < tiny {
+			pivot = -tiny
 		}
-		if d < 0 {
-			nodes++
+		if pivot < 0 {
+			negative++
 		}
-		r := -t.off[i] / d
-		z[i] = r
-		d = t.diag[i+1] - e + t.off[i]*r
+		link := t.off[min(i, i+step)]
+		z[i] = -link / pivot
+		pull = link * z[i]
 	}
-	if m > 0 {
-		f = d
-	}
-	d = t.diag[n-1] - e
-	for i := n - 1; i > m; i-- {
-		if math.Abs(d) < tiny {
-			d = -tiny
-		}
-		if d < 0 {
-			nodes++
-		}
-		r := -t.off[i-1] / d
-		z[i] = r
-		if i == m+1 {
-			f += t.off[m] * r
-			break
-		}
-		d = t.diag[i-1] - e + t.off[i-1]*r
-	}
-	return f, unroll(z, m), nodes
+	return pull, negative
 }
 
 // unroll turns the ratios of neighbours left by twist into the vector with
