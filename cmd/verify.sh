@@ -66,7 +66,7 @@ run() {
 failed=""
 # The pages need no C and no display; only the program does.
 # shellcheck disable=SC2086
-run tests env CGO_ENABLED=0 go test $(CGO_ENABLED=0 go list $PACKAGES | grep -v '/cmd/hilltop$')
+run tests env CGO_ENABLED=0 go test $(go list $PACKAGES | grep -v '/cmd/hilltop$')
 # shellcheck disable=SC2086
 run race env CGO_ENABLED=1 go test -race -short $GOROUTINES
 
@@ -89,7 +89,7 @@ if [ -n "$LONG" ]; then
 			run "fuzz-$target" go test -run '^$' -fuzz "^$target\$" -fuzztime 60s "$package"
 		done
 	done
-	run long env HILLTOP_LONG=1 CGO_ENABLED=0 go test -timeout 60m $(CGO_ENABLED=0 go list $PACKAGES | grep -v '/cmd/hilltop$')
+	run long env HILLTOP_LONG=1 CGO_ENABLED=0 go test -timeout 60m $(go list $PACKAGES | grep -v '/cmd/hilltop$')
 fi
 
 count() { cat "$logs"/* 2>/dev/null | grep -a -c "^ *--- $1" || true; }

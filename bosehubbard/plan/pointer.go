@@ -29,7 +29,7 @@ func SplitPath(path string) ([]string, error) {
 	}
 	tokens := strings.Split(path[1:], "/")
 	for i, token := range tokens {
-		plain := strings.NewReplacer("~0", "", "~1", "").Replace(token)
+		plain := withoutEscapes.Replace(token)
 		if strings.Contains(plain, "~") {
 			return nil, fmt.Errorf("plan: path %q, want ~0 for ~ and ~1 for /", path)
 		}
@@ -38,13 +38,16 @@ func SplitPath(path string) ([]string, error) {
 	return tokens, nil
 }
 
-func escape(token string) string {
-	return strings.NewReplacer("~", "~0", "/", "~1").Replace(token)
-}
+// The replacers are made once: paths are built at every knob move.
+var (
+	escapes        = strings.NewReplacer("~", "~0", "/", "~1")
+	unescapes      = strings.NewReplacer("~0", "~", "~1", "/")
+	withoutEscapes = strings.NewReplacer("~0", "", "~1", "")
+)
 
-func unescape(token string) string {
-	return strings.NewReplacer("~0", "~", "~1", "/").Replace(token)
-}
+func escape(token string) string { return escapes.Replace(token) }
+
+func unescape(token string) string { return unescapes.Replace(token) }
 
 // listIndex reads an array index of RFC 6901: digits without a leading zero.
 func listIndex(token string) (int, bool) {

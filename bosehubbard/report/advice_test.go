@@ -5,6 +5,7 @@ import (
 	"math/rand/v2"
 	"strings"
 	"testing"
+	"unicode/utf8"
 
 	"hilltop/bosehubbard/plan"
 )
@@ -88,6 +89,9 @@ func TestAdviceMendsItsCriterion(t *testing.T) {
 	given, absent := 0, map[string]int{}
 	for n := range 100 {
 		d, r := broken(t, rng)
+		if length := utf8.RuneCountInString(r.Sentence); length > sentenceLength {
+			t.Errorf("plan %d: sentence of %d runes: %q", n, length, r.Sentence)
+		}
 		for _, c := range r.Ceiling.Criteria {
 			switch {
 			case c.Passed:

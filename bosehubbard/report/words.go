@@ -31,6 +31,9 @@ func (r *Report) sentence() string {
 			return full
 		}
 	}
+	if utf8.RuneCountInString(head) > sentenceLength {
+		return fmt.Sprintf("%s: %s is short by %s %s.", title(r.Verdict), criterionWords[worst.Name], digits.Size(worst.Margin, 3), unitWords[worst.Unit])
+	}
 	return head
 }
 
