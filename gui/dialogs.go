@@ -54,8 +54,7 @@ type answers struct {
 // answer puts what a state asks, once.
 func (w *Window) answer(s session.State) {
 	if s.Broken != nil && s.Broken != w.answers.broken {
-		lines := append([]string{s.Broken.Reason}, s.Broken.Mistakes...)
-		w.tell("'"+s.Broken.Name+"' was not opened", strings.Join(lines, "\n"))
+		w.tellBroken(s.Broken)
 	}
 	w.answers.broken = s.Broken
 	if len(s.Recoveries) > 0 && !w.answers.recoveries {
@@ -66,6 +65,12 @@ func (w *Window) answer(s session.State) {
 		w.askAboutDisk(s)
 	}
 	w.answers.disk = s.OnDisk
+}
+
+// tellBroken says why a plan was not opened, with every mistake in it.
+func (w *Window) tellBroken(b *session.Broken) {
+	lines := append([]string{b.Reason}, b.Mistakes...)
+	w.tell("'"+b.Name+"' was not opened", strings.Join(lines, "\n"))
 }
 
 // offer offers the work that an earlier run left behind, one after the other.

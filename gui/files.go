@@ -11,13 +11,17 @@ import (
 	"hilltop/gui/session"
 )
 
-// openFirst opens the plan that the window begins with: the demo, where there is
-// no path or its plan cannot be opened.
+// openFirst opens the plan that the window begins with: the demo where there is no
+// path, or where its plan cannot be opened, which is then said.
 func (w *Window) openFirst(path string) {
 	if path != "" && w.desk.OpenFile(path) == nil {
 		return
 	}
+	broken := w.desk.State().Broken
 	w.say(w.desk.NewFrom(DemoPlan))
+	if broken != nil {
+		w.tellBroken(broken)
+	}
 }
 
 // open opens a plan. One that cannot be opened leaves the present one, and the
@@ -54,9 +58,9 @@ func (w *Window) showFileDialog(d *dialog.FileDialog) {
 			d.SetLocation(folder)
 		}
 	}
+	d.Show() // only a dialog that is shown can be resized
 	size := w.window.Canvas().Size()
 	d.Resize(fyne.NewSize(size.Width*0.8, size.Height*0.8))
-	d.Show()
 }
 
 // save writes the plan to its file, and then goes on.

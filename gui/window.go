@@ -31,6 +31,7 @@ type Window struct {
 	app     fyne.App
 	window  fyne.Window
 	desk    *session.Session
+	folder  string // for the look; "" for none
 	state   session.State
 	look    look
 	metrics Metrics
@@ -53,9 +54,8 @@ type Window struct {
 // New opens a window of an application and shows a plan. Run the application, and
 // then [Window.Close].
 func New(app fyne.App, opt Options) *Window {
-	w := &Window{app: app, window: app.NewWindow("Hilltop")}
-	w.look = w.firstLook(opt)
-	w.wear(w.look)
+	w := &Window{app: app, window: app.NewWindow("Hilltop"), folder: opt.Folder}
+	w.wear(firstLook(opt))
 	if opt.Post == nil {
 		opt.Post = Post
 	}

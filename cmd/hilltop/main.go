@@ -8,6 +8,7 @@ import (
 	"flag"
 	"fmt"
 	"io"
+	"log"
 	"os"
 	"os/signal"
 	"syscall"
@@ -37,6 +38,7 @@ func run(args []string, stderr io.Writer) int {
 		fmt.Fprintln(stderr, "hilltop: no folder for recovery files, going on without:", err)
 		opt.Folder = ""
 	}
+	log.SetOutput(&quiet{to: stderr})
 	program := app.NewWithID(appID)
 	window := gui.New(program, opt)
 	stop := make(chan os.Signal, 1)
