@@ -3,7 +3,6 @@ package figure
 import (
 	"image"
 	"image/color"
-	"image/draw"
 	"math"
 
 	xdraw "golang.org/x/image/draw"
@@ -44,13 +43,15 @@ var _ vg.CanvasSizer = (*canvas)(nil)
 // newCanvas returns a canvas for an image whose pixels are 1/scale px wide, filled
 // with a colour. dst must start at (0, 0).
 func newCanvas(dst *image.RGBA, b *brush, f Frame, ground color.RGBA) *canvas {
-	draw.Draw(dst, dst.Bounds(), image.NewUniform(ground), image.Point{}, draw.Src)
 	bounds := dst.Bounds()
 	b.shape.resize(bounds.Dx(), bounds.Dy())
 	scale := f.scale() / float64(px)
 	c := &canvas{dst: dst, brush: b, size: vg.Point{X: vg.Length(f.Width) * px, Y: vg.Length(f.Height) * px}}
 	c.state.m = affine{a: scale, d: -scale, f: scale * float64(c.size.Y)}
 	vg.Initialize(c)
+	c.state.ink = ground
+	c.block(Point{}, Point{float64(bounds.Dx()), float64(bounds.Dy())})
+	c.state.ink = color.RGBA{A: 255}
 	return c
 }
 
@@ -102,14 +103,40 @@ func (c *canvas) Pop() {
 func (c *canvas) Fill(path vg.Path) {
 	c.traces = flatten(c.traces, path, c.state.m)
 	for _, t := range c.traces {
-		if upright(t.points, true) {
-			for i, p := range t.points {
-				t.points[i] = Point{math.Round(p.X), math.Round(p.Y)}
-			}
+		if !upright(t.points, true) {
+			c.brush.shape.polygon(t.points)
+			continue
 		}
-		c.brush.shape.polygon(t.points)
+		for i, p := range t.points {
+			t.points[i] = Point{math.Round(p.X), math.Round(p.Y)}
+		}
+		if len(t.points) == 4 { // a rectangle of whole pixels
+			c.block(t.points[0], t.points[2])
+		} else {
+			c.brush.shape.polygon(t.points)
+		}
 	}
 	c.brush.shape.paint(c.dst, c.state.ink)
+}
+
+// block paints the whole pixels between two corners.
+func (c *canvas) block(p, q Point) {
+	size := c.dst.Bounds()
+	limit := func(v float64, most int) int { return int(min(max(v, 0), float64(most))) }
+	x0, x1 := limit(min(p.X, q.X), size.Dx()), limit(max(p.X, q.X), size.Dx())
+	y0, y1 := limit(min(p.Y, q.Y), size.Dy()), limit(max(p.Y, q.Y), size.Dy())
+	if x0 >= x1 || y0 >= y1 {
+		return
+	}
+	row := func(y int) []uint8 { return c.dst.Pix[y*c.dst.Stride+4*x0 : y*c.dst.Stride+4*x1] }
+	first, ink := row(y0), c.state.ink
+	first[0], first[1], first[2], first[3] = ink.R, ink.G, ink.B, 255
+	for done := 4; done < len(first); done *= 2 {
+		copy(first[done:], first[:done])
+	}
+	for y := y0 + 1; y < y1; y++ {
+		copy(row(y), first)
+	}
 }
 
 // Stroke paints a line along a path.
@@ -173,5 +200,5 @@ func (c *canvas) DrawImage(rect vg.Rectangle, img image.Image) {
 	p := c.state.m.apply(float64(rect.Min.X), float64(rect.Max.Y))
 	q := c.state.m.apply(float64(rect.Max.X), float64(rect.Min.Y))
 	to := image.Rect(int(math.Round(p.X)), int(math.Round(p.Y)), int(math.Round(q.X)), int(math.Round(q.Y)))
-	xdraw.NearestNeighbor.Scale(c.dst, to, img, img.Bounds(), draw.Over, nil)
+	xdraw.NearestNeighbor.Scale(c.dst, to, img, img.Bounds(), xdraw.Over, nil)
 }

@@ -94,3 +94,18 @@ func (g *Geometry) At(p Point) string {
 	}
 	return ""
 }
+
+// Read gives the energy at a place of the linear part, and on the hill the site;
+// ok is false elsewhere.
+func (g *Geometry) Read(p Point) (r Reading, ok bool) {
+	if !g.Plot.Contains(p) || p.Y < g.Sky.Y1 || p.Y > g.Ground.Y0 {
+		return Reading{}, false
+	}
+	r = Reading{Y: g.Scale.Hz(p.Y), At: p}
+	r.Text = "E/N " + g.unit.signed(r.Y, 4)
+	if s := g.Slope; s != nil && p.X >= s.Box.X0 && p.X <= s.Box.X1 {
+		r.X = s.Site(p.X)
+		r.Text += " at " + Number(r.X, 3) + " sites along " + s.Axis
+	}
+	return r, true
+}

@@ -45,6 +45,7 @@ func (b *builder) chooseScale() {
 		}
 	}
 	b.unit = b.options.Unit.prefixed(b.report, half)
+	b.g.unit = b.unit
 	b.g.Scale = EnergyScale{Top: b.g.Sky.Y1 + inset, Bottom: b.g.Ground.Y0 - inset, HalfRange: half * one}
 	step := half / 2
 	for _, v := range [...]float64{0, 2, -2, 1, -1} { // the most telling first

@@ -1,9 +1,11 @@
 package figure
 
 import (
+	"bytes"
 	"fmt"
 	"image/png"
 	"io"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/vgsvg"
@@ -21,11 +23,22 @@ func (r *Renderer) WritePNG(w io.Writer, p Picture, f Frame, s Style) error {
 func WriteSVG(w io.Writer, p Picture, f Frame, s Style) error {
 	c := vgsvg.New(vg.Length(f.Width)*px, vg.Length(f.Height)*px)
 	p.Draw(c, f, s)
-	if _, err := c.WriteTo(w); err != nil {
+	var text bytes.Buffer
+	_, err := c.WriteTo(&text)
+	if err == nil {
+		_, err = fontFamilies.WriteString(w, text.String())
+	}
+	if err != nil {
 		return fmt.Errorf("figure: SVG of %q: %w", p.Stem(), err)
 	}
 	return nil
 }
+
+// fontFamilies adds fonts of the same widths for readers without ours.
+var fontFamilies = strings.NewReplacer(
+	"font-family:Liberation Sans;", "font-family:'Liberation Sans',Arial,Helvetica,sans-serif;",
+	"font-family:Liberation Mono;", "font-family:'Liberation Mono','Courier New',monospace;",
+)
 
 // WritePDF writes a picture on one page of its size, with the fonts embedded.
 func WritePDF(w io.Writer, p Picture, f Frame, s Style) error {

@@ -33,6 +33,7 @@ type Geometry struct {
 	Labels  []Label
 
 	text float64
+	unit measureOf
 }
 
 // EndKind says how the end of a bar is drawn.

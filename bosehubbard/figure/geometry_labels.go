@@ -11,8 +11,9 @@ func (b *builder) label() {
 	b.labelAxis()
 	b.labelNames()
 	b.labelCeiling()
+	b.keepBarsFree()
 	b.labelFlag()
-	b.keepMarksFree()
+	b.keepLinesFree()
 	b.labelEnds()
 	b.labelHill()
 	b.labelUnbounded()
@@ -20,16 +21,20 @@ func (b *builder) label() {
 	b.g.Labels = b.placer.labels
 }
 
-// keepMarksFree keeps labels off bars, lids, stems and lines.
-func (b *builder) keepMarksFree() {
+// keepBarsFree keeps labels off bars, lids, strips, arrows and the carry line.
+func (b *builder) keepBarsFree() {
+	b.keepLineFree(b.g.Carry)
+	for _, bar := range append(append([]Bar(nil), b.g.Bars...), b.g.Total) {
+		b.placer.taken = append(b.placer.taken, b.reach(&bar))
+	}
+}
+
+// keepLinesFree keeps labels off the axes and the hill.
+func (b *builder) keepLinesFree() {
 	g := b.g
 	b.keepLineFree([]Point{{g.Plot.X0, g.Scale.zero()}, {g.Terms.X1, g.Scale.zero()}})
 	b.keepLineFree([]Point{{g.Plot.X0, g.Sky.Y1}, {g.Plot.X0, g.Ground.Y0}})
 	b.keepLineFree([]Point{{g.Ruler.X0, g.Sky.Y1}, {g.Ruler.X0, g.Ground.Y0}})
-	b.keepLineFree(g.Carry)
-	for _, bar := range append(append([]Bar(nil), g.Bars...), g.Total) {
-		b.placer.taken = append(b.placer.taken, b.reach(&bar))
-	}
 	if s := g.Slope; s != nil {
 		upper, lower := g.hillEdges()
 		for _, edge := range [...][]Point{upper, lower} {
@@ -40,12 +45,8 @@ func (b *builder) keepMarksFree() {
 
 // keepLineFree keeps labels off a line.
 func (b *builder) keepLineFree(points []Point) {
-	const half = 1.5
 	for i := 0; i+1 < len(points); i++ {
-		p, q := points[i], points[i+1]
-		b.placer.taken = append(b.placer.taken, Rect{
-			min(p.X, q.X) - half, min(p.Y, q.Y) - half, max(p.X, q.X) + half, max(p.Y, q.Y) + half,
-		})
+		b.placer.taken = append(b.placer.taken, boxOf(points[i], points[i+1], 1.5))
 	}
 }
 
@@ -164,7 +165,9 @@ func (b *builder) labelFlag() {
 	right := g.Frame.X1 - 4
 	b.placer.put(Flag, text,
 		anchor{Point{right, g.Sky.Y1 + 6}, 1, 0}, anchor{Point{right, g.Ground.Y0 - 6}, 1, 1},
-		anchor{Point{right, g.Sky.Y0 + 4}, 1, 0}, anchor{Point{right, g.Ground.Y1 - 4}, 1, 1})
+		anchor{Point{right, g.Sky.Y0 + 4}, 1, 0}, anchor{Point{right, g.Ground.Y1 - 4}, 1, 1},
+		anchor{Point{g.Plot.X0 + 4, g.Sky.Y0 + 4}, 0, 0}, anchor{Point{g.Plot.X0 + 4, g.Ground.Y1 - 4}, 0, 1},
+		anchor{Point{right, b.names + 4}, 1, 0})
 }
 
 // labelEnds writes the numbers of the bars, first those that count.

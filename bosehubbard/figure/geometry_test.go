@@ -249,6 +249,11 @@ func TestStateLineOnlyWhereBounded(t *testing.T) {
 		if g.State != nil {
 			near1e9(t, "state", g.Scale.Hz(g.State.Y), state, g.Scale.HalfRange)
 		}
+	}
+}
+
+func TestOpenPlansHaveTheFlag(t *testing.T) {
+	eachGeometry(t, func(t *testing.T, r *report.Report, g *Geometry) {
 		flagged := false
 		for _, l := range g.Labels {
 			flagged = flagged || l.Role == Flag
@@ -256,7 +261,7 @@ func TestStateLineOnlyWhereBounded(t *testing.T) {
 		if flagged != g.Open {
 			t.Errorf("open %v, flag %v", g.Open, flagged)
 		}
-	}
+	})
 }
 
 func TestClickFindsTheTerm(t *testing.T) {
@@ -269,5 +274,18 @@ func TestClickFindsTheTerm(t *testing.T) {
 	}
 	if got := g.At(Point{2, 10}); got != "" {
 		t.Errorf("at the border: %q, want nothing", got)
+	}
+}
+
+func TestReadGivesTheEnergyAtAPlace(t *testing.T) {
+	r := handmade(nil)
+	g := CeilingGeometry(r, frames[0], Style{}, CeilingOptions{})
+	at := Point{g.Slope.X(30), g.Scale.Y(1000)}
+	got, ok := g.Read(at)
+	if want := "E/N +1,000 Hz at 30 sites along x"; !ok || got.Text != want {
+		t.Errorf("reads %q, %v; want %q", got.Text, ok, want)
+	}
+	if _, ok := g.Read(Point{at.X, g.Sky.Y0 + 5}); ok {
+		t.Error("the sky has an energy")
 	}
 }

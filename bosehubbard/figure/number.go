@@ -31,10 +31,7 @@ func Number(v float64, digits int) string {
 
 // Signed is Number with a plus sign where v is positive.
 func Signed(v float64, digits int) string {
-	if v > 0 {
-		return "+" + Number(v, digits)
-	}
-	return Number(v, digits)
+	return plus(v) + Number(v, digits)
 }
 
 // decimal writes v with so many decimals, as the numbers along an axis need.

@@ -54,9 +54,6 @@ func blend(a, b color.RGBA, part float64) color.RGBA {
 // grey is the neutral fill of areas that are neither bounded nor unbounded.
 func (p Palette) grey() color.RGBA { return blend(p.Paper, p.Edge, 0.35) }
 
-// grid is the colour of lines that only help the eye.
-func (p Palette) grid() color.RGBA { return blend(p.Paper, p.Edge, 0.3) }
-
 // of is the colour of a fill.
 func (p Palette) of(f Fill) color.RGBA {
 	switch f {

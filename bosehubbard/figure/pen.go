@@ -16,13 +16,16 @@ import (
 // pen draws on a canvas in px, y downwards.
 type pen struct {
 	canvas vg.Canvas
-	height float64 // of the canvas, px
+	width  float64 // of the picture, px
+	height float64
 	style  Style
 	path   vg.Path
 	dash   []vg.Length
 }
 
-func newPen(c vg.Canvas, f Frame, s Style) *pen { return &pen{canvas: c, height: f.Height, style: s} }
+func newPen(c vg.Canvas, f Frame, s Style) *pen {
+	return &pen{canvas: c, width: f.Width, height: f.Height, style: s}
+}
 
 func (p *pen) at(x, y float64) vg.Point {
 	return vg.Point{X: vg.Length(x) * px, Y: vg.Length(p.height-y) * px}
@@ -102,6 +105,16 @@ func (p *pen) circle(at Point, radius float64, s stroke) {
 	p.canvas.Fill(p.path)
 	p.set(s)
 	p.canvas.Stroke(p.path)
+}
+
+// disc draws a full circle in ink.
+func (p *pen) disc(at Point, radius float64) {
+	p.path = p.path[:0]
+	p.path.Move(p.at(at.X+radius, at.Y))
+	p.path.Arc(p.at(at.X, at.Y), vg.Length(radius)*px, 0, 2*math.Pi)
+	p.path.Close()
+	p.canvas.SetColor(p.style.Palette.Ink)
+	p.canvas.Fill(p.path)
 }
 
 // text draws a text with its left end and base line at a point.

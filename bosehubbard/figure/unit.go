@@ -34,7 +34,10 @@ func Units(r *report.Report) []Unit {
 
 // hz returns the energy of one unit in Hz, or 0 where the report has none.
 func (u Unit) hz(r *report.Report) float64 {
-	end := last(r)
+	var end *report.Stage
+	if r != nil {
+		end = last(r)
+	}
 	switch u {
 	case NanoKelvin:
 		return 1 / (si.KelvinFromHz(1) * 1e9)
@@ -75,24 +78,67 @@ func (u Unit) prefixed(r *report.Report, half float64) measureOf {
 	if !(m.hz > 0) {
 		m = measureOf{"Hz", 1}
 	}
-	type step struct {
-		from  float64
-		name  string
-		times float64
+	return m.prefixed(half)
+}
+
+// ofRecoil is a unit where only the recoil energy in Hz is known, with a prefix for
+// energies up to largest, in Hz.
+func (u Unit) ofRecoil(recoil, largest float64) measureOf {
+	m := measureOf{Hertz.String(), 1}
+	switch {
+	case u == Recoil && recoil > 0:
+		m = measureOf{u.String(), recoil}
+	case u == NanoKelvin:
+		m = measureOf{u.String(), u.hz(nil)}
 	}
-	steps := map[string][]step{
-		"Hz": {{1e8, "MHz", 1e6}, {1e5, "kHz", 1e3}, {0.1, "Hz", 1}, {0, "mHz", 1e-3}},
-		"nK": {{1e8, "mK", 1e6}, {1e5, "µK", 1e3}, {0.1, "nK", 1}, {0, "pK", 1e-3}},
-	}
-	for _, s := range steps[m.name] {
-		if half >= s.from {
-			return measureOf{s.name, m.hz * s.times}
+	return m.prefixed(largest / m.hz)
+}
+
+func (m measureOf) prefixed(half float64) measureOf {
+	for _, p := range prefixes[m.name] {
+		if half >= p.from {
+			return measureOf{p.name, m.hz * p.times}
 		}
 	}
 	return m
 }
 
-// signed writes an energy in Hz with sign and unit.
+type prefix struct {
+	from  float64 // used for numbers from here on
+	name  string
+	times float64
+}
+
+var prefixes = map[string][]prefix{
+	"Hz": {{1e8, "MHz", 1e6}, {1e5, "kHz", 1e3}, {0.1, "Hz", 1}, {0, "mHz", 1e-3}},
+	"nK": {{1e8, "mK", 1e6}, {1e5, "µK", 1e3}, {0.1, "nK", 1}, {0, "pK", 1e-3}},
+}
+
+// signed writes an energy in Hz with sign and unit; one far beyond the range gets a
+// prefix of its own.
 func (m measureOf) signed(hz float64, digits int) string {
+	if v := math.Abs(hz / m.hz); v >= 1e5 {
+		m = m.prefixed(v)
+	}
+	if v := hz / m.hz; math.Abs(v) >= 1e6 {
+		return plus(v) + exponent(v, min(digits, 3)) + " " + m.name
+	}
 	return Signed(hz/m.hz, digits) + " " + m.name
+}
+
+// plus is the sign of a positive number.
+func plus(v float64) string {
+	if v > 0 {
+		return "+"
+	}
+	return ""
+}
+
+// list returns energies in Hz in the unit.
+func (m measureOf) list(hz []float64) []float64 {
+	out := make([]float64, len(hz))
+	for i, v := range hz {
+		out[i] = v / m.hz
+	}
+	return out
 }
