@@ -2,6 +2,7 @@ package figure
 
 import (
 	"math"
+	"strings"
 )
 
 // label places every text, the most important first; one that finds no room
@@ -208,7 +209,9 @@ func (b *builder) labelEnd(bar *Bar, end *End, role Role) {
 		{Point{left, end.Y - 3}, 1, 1}, {Point{left, end.Y + 3}, 1, 0},
 		{Point{bar.Centre(), end.Y - 7}, 0.5, 1}, {Point{bar.Centre(), end.Y + 7}, 0.5, 0},
 	}
+	// Digits go before the unit, which stands above the axis as well.
 	_ = b.placer.put(role, text, anchors...) ||
+		b.placer.put(role, b.unit.signed(end.Hz, 2), anchors...) ||
 		b.placer.put(role, Signed(end.Hz/b.unit.hz, 3), anchors...)
 }
 
@@ -239,6 +242,7 @@ func (b *builder) labelTraps() {
 			_ = b.placer.put(Word, axis+" unbounded", anchors...) || b.placer.put(Word, axis+" ∞", anchors...)
 		default:
 			_ = b.placer.put(Quantity, axis+" "+b.unit.signed(hz, 3), anchors...) ||
+				b.placer.put(Quantity, axis+" "+b.unit.signed(hz, 1), anchors...) ||
 				b.placer.put(Quantity, axis+" "+Signed(hz/b.unit.hz, 3), anchors...)
 		}
 	}
@@ -281,7 +285,7 @@ func (b *builder) labelDrain() {
 		}
 		full := text
 		if c.Margin != 0 && c.Name != "held" {
-			full += " by " + Number(-c.Margin, 3) + " " + c.Unit
+			full += " by " + Number(-c.Margin, 3) + " " + strings.Replace(c.Unit, "site2", "site²", 1)
 		}
 		anchors := append(near(Point{bar.X1 + 10, tip}, 0, step, 3*step), near(Point{bar.X0 - 10, tip}, 1, step, 3*step)...)
 		_ = b.placer.put(Word, full, anchors...) || b.placer.put(Word, text, anchors...)
