@@ -77,30 +77,33 @@ func (r *badgeRenderer) Refresh() {
 // The shape is drawn on a square of 48 units, the bar 20 wide in its middle.
 const (
 	badgeUnits = 48
-	barLeft    = 14
-	barRight   = 34
+	barLeft    = 13
+	barRight   = 35
 	barBottom  = 46
-	lidLeft    = 6 // 8 beyond the bar
-	lidRight   = 42
-	lidTop     = 10
+	lidLeft    = 5 // 8 beyond the bar
+	lidRight   = 43
+	lidTop     = 8
 	lidDeep    = 4
+	barTop     = 15
 	lidTurn    = 8 // how far its ends turn inward
 )
 
 func (r *badgeRenderer) Layout(size fyne.Size) {
 	r.parts = nil
-	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, flip: r.badge.Floor, units: badgeUnits, add: func(o fyne.CanvasObject) {
-		r.parts = append(r.parts, o)
-	}}
+	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, units: badgeUnits, flip: r.badge.Floor, stroke: lineNormal,
+		add: func(o fyne.CanvasObject) { r.parts = append(r.parts, o) }}
+	if pen.unit < 2./3 {
+		pen.stroke = lineThin // an outline must not fill the bar of a small mark
+	}
 	switch r.badge.Verdict {
 	case sealed:
-		pen.bar(lidTop+lidDeep+2, barBottom, ColorBlue)
+		pen.bar(barTop, barBottom, ColorBlue)
 		pen.lid(lidLeft, lidRight)
 	case leaky:
-		pen.bar(lidTop+lidDeep+2, barBottom, ColorYellow)
+		pen.bar(barTop, barBottom, ColorYellow)
 		pen.splitLid()
 	case astray:
-		pen.bar(lidTop+lidDeep+2, 22, ColorBlue)
+		pen.bar(barTop, 24, ColorBlue)
 		pen.lid(lidLeft, lidRight)
 		pen.diamond(24, 37, 8)
 	case open:
@@ -118,7 +121,9 @@ type pen struct {
 	unit  float32
 	units float32
 	flip  bool
-	add   func(fyne.CanvasObject)
+	// stroke is the width of an outline, in pixels.
+	stroke float32
+	add    func(fyne.CanvasObject)
 }
 
 // rect fills a rectangle.
@@ -131,7 +136,7 @@ func (p pen) rect(left, top, right, bottom float32, fill fyne.ThemeColorName) {
 
 // bar is a filled bar with an ink outline.
 func (p pen) bar(top, bottom float32, fill fyne.ThemeColorName) {
-	edge := lineNormal / p.unit
+	edge := p.stroke / p.unit
 	p.rect(barLeft, top, barRight, bottom, ColorInk)
 	p.rect(barLeft+edge, top+edge, barRight-edge, bottom-edge, fill)
 }
@@ -150,9 +155,9 @@ func (p pen) splitLid() {
 	p.rect(30, lidTop, lidRight, lidTop+lidDeep, ColorInk)
 	p.rect(lidLeft, lidTop, lidLeft+lidDeep, lidTop+lidTurn+lidDeep, ColorInk)
 	p.rect(lidRight-lidDeep, lidTop, lidRight, lidTop+lidTurn+lidDeep, ColorInk)
-	p.line(24, lidTop+lidDeep+2, 24, 2, lineCurve)
-	p.line(19, 7, 24, 1.5, lineCurve)
-	p.line(29, 7, 24, 1.5, lineCurve)
+	p.line(24, barTop, 24, 1, 2)
+	p.line(20, 5, 24, 1, 2)
+	p.line(28, 5, 24, 1, 2)
 }
 
 // strips is the upper end of a bar without a bound: strips that thin out from 7 to

@@ -28,9 +28,9 @@ var _ Page = (*CeilingPage)(nil)
 
 func newCeilingPage(tools pageTools) *CeilingPage {
 	p := &CeilingPage{tools: tools, sentence: NewProse("", textSentence, 0).bold(), criteria: NewColumn(0, 0)}
-	p.terms = NewGrid([]GridColumn{{"Term, per atom", true}, {"Floor", false}, {"Ceiling", false}, {"", true}}, p.explainTerm)
+	p.terms = NewGrid(p.explainTerm)
 	p.terms.OnKey = tools.key
-	p.stages = NewGrid(nil, p.stageCell)
+	p.stages = NewGrid(p.stageCell)
 	p.stages.OnKey = tools.key
 	p.scroller = NewScroller(NewColumn(space12, space16, p.sentence, p.criteria, p.terms, p.stages))
 	return p
@@ -76,12 +76,16 @@ func (p *CeilingPage) Show(s session.State) {
 		p.sentence.Color = ColorSoftInk
 	}
 	p.sentence.SetText(p.title(s))
+	for _, o := range []fyne.CanvasObject{p.criteria, p.terms, p.stages} {
+		show(o, s.Report != nil)
+	}
 	if s.Report != nil {
 		p.showCriteria(s)
 		p.showTerms(s)
 		p.showStages(s)
 	}
-	p.scroller.Refresh()
+	p.criteria.Refresh()
+	p.scroller.Fit()
 }
 
 // title says at which stage the energy is bounded and by what.
@@ -115,13 +119,15 @@ func (p *CeilingPage) showCriteria(s session.State) {
 		if !c.Passed {
 			shown.verdict = c.Breaks
 			if advice, ok := p.tools.desk.AdviceFor(c.Name); ok && !s.Fading {
-				shown.advice = &advice
+				p.rows[i].advice, shown.mend = advice, advice.Text
 			}
 		}
 		p.rows[i].set(shown)
 		p.criteria.Objects = append(p.criteria.Objects, p.rows[i])
 	}
 }
+
+var termColumns = []GridColumn{{"Term, per atom", true}, {"Floor", false}, {"Ceiling", false}, {"", true}}
 
 func (p *CeilingPage) showTerms(s session.State) {
 	var rows []GridRow
@@ -137,7 +143,7 @@ func (p *CeilingPage) showTerms(s session.State) {
 	}
 	p.termIDs = append(p.termIDs, "total")
 	total := s.Report.Ceiling.Total
-	p.terms.Set(append(rows, GridRow{Chosen: true, Cells: []string{
+	p.terms.Set(termColumns, append(rows, GridRow{Chosen: true, Cells: []string{
 		screenName("total"),
 		boundText(total.Floor.Known, total.Floor.Unbounded(), total.Floor.Hz),
 		boundText(total.Ceiling.Known, total.Ceiling.Unbounded(), total.Ceiling.Hz),
@@ -163,8 +169,9 @@ var stageColumns = []struct {
 
 // showStages fills the stage table; a column in which nothing stands is left out.
 func (p *CeilingPage) showStages(s session.State) {
+	var columns []GridColumn
 	rows := make([]GridRow, len(s.Rows))
-	p.stageIDs, p.stageTopics, p.stages.Columns = nil, nil, nil
+	p.stageIDs, p.stageTopics = nil, nil
 	for i, r := range s.Rows {
 		rows[i].Chosen = r.Stage == s.Stage
 		p.stageIDs = append(p.stageIDs, r.Stage)
@@ -173,13 +180,13 @@ func (p *CeilingPage) showStages(s session.State) {
 		if !slices.ContainsFunc(s.Rows, func(r session.StageRow) bool { return column.cell(r) != "" }) {
 			continue
 		}
-		p.stages.Columns = append(p.stages.Columns, column.GridColumn)
+		columns = append(columns, column.GridColumn)
 		p.stageTopics = append(p.stageTopics, column.topic)
 		for i, r := range s.Rows {
 			rows[i].Cells = append(rows[i].Cells, column.cell(r))
 		}
 	}
-	p.stages.Set(rows)
+	p.stages.Set(columns, rows)
 }
 
 // explainTerm explains the term of a row.

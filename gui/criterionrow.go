@@ -17,7 +17,8 @@ type CriterionRow struct {
 	margin *Number
 	detail *Prose
 	button *Button
-	advice session.Advice
+	advice session.Advice // what the button does
+	shown  *criterion
 }
 
 var _ fyne.Widget = (*CriterionRow)(nil)
@@ -38,21 +39,22 @@ func newCriterionRow(tools pageTools) *CriterionRow {
 type criterion struct {
 	name, detail, margin, verdict string
 	floor                         bool
-	advice                        *session.Advice
+	mend                          string // on the button; "" for none
 }
 
 // set shows a criterion.
 func (r *CriterionRow) set(c criterion) {
+	if r.shown != nil && *r.shown == c {
+		return
+	}
+	r.shown = &c
 	r.mark.set(c.verdict, c.floor)
 	r.name.Text = screenName(c.name)
 	r.name.Bold = c.verdict != sealed
 	r.margin.Set(c.margin, c.name)
 	r.detail.Text = c.detail
-	show(r.button, c.advice != nil)
-	if c.advice != nil {
-		r.advice = *c.advice
-		r.button.SetText(c.advice.Text)
-	}
+	show(r.button, c.mend != "")
+	r.button.SetText(c.mend)
 	r.Refresh()
 }
 

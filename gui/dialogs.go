@@ -1,6 +1,7 @@
 package gui
 
 import (
+	"slices"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -15,23 +16,32 @@ type answer struct {
 	do    func()
 }
 
-// ask asks a question; the last button takes it back.
+func nothing() {}
+
+// ask asks a question; a last button takes it back, and so does Escape.
 func (w *Window) ask(title, text string, answers ...answer) {
-	w.dialog(title, text, "Cancel", answers)
+	w.dialog(title, text, append(answers, answer{"Cancel", nothing}))
 }
 
 // tell shows a text until it is dismissed.
-func (w *Window) tell(title, text string) { w.dialog(title, text, "Close", nil) }
+func (w *Window) tell(title, text string) { w.dialog(title, text, []answer{{"Close", nothing}}) }
 
-func (w *Window) dialog(title, text, last string, answers []answer) {
+func (w *Window) dialog(title, text string, answers []answer) {
 	prose := NewProse(text, textBody, 0)
 	d := dialog.NewCustomWithoutButtons(title, NewScroller(NewColumn(space8, space8, prose)), w.window)
 	var buttons []fyne.CanvasObject
-	for _, a := range append(answers, answer{last, func() {}}) {
-		buttons = append(buttons, NewButton(a.label, func() {
+	for _, a := range answers {
+		button := NewButton(a.label, func() {
 			d.Hide()
 			a.do()
-		}))
+		})
+		button.OnKey = func(e *fyne.KeyEvent) {
+			if e.Name == fyne.KeyEscape {
+				d.Hide()
+				answers[len(answers)-1].do()
+			}
+		}
+		buttons = append(buttons, button)
 	}
 	d.SetButtons(buttons)
 	room := w.window.Canvas().Size()
@@ -73,15 +83,37 @@ func (w *Window) tellBroken(b *session.Broken) {
 	w.tell("'"+b.Name+"' was not opened", strings.Join(lines, "\n"))
 }
 
+// tellFailure says why the plan has no report, leads to the value at fault, or
+// tries again.
+func (w *Window) tellFailure() {
+	f := w.state.Failure
+	if f == nil {
+		return
+	}
+	lines := append([]string{f.Reason, f.Cure}, f.Details...)
+	answers := []answer{{"Judge again", w.retry}, {"Close", nothing}}
+	if f.Field != "" {
+		answers = slices.Insert(answers, 1, answer{"Go to the value", func() { w.column.Reveal(f.Field) }})
+	}
+	w.dialog("The plan could not be judged", strings.Join(lines, "\n"), answers)
+}
+
+func (w *Window) retry() {
+	w.desk.Retry()
+	w.Echo()
+}
+
 // offer offers the work that an earlier run left behind, one after the other.
 func (w *Window) offer(list []session.Recovery) {
 	if len(list) == 0 {
 		return
 	}
 	r := list[0]
-	w.ask("Unsaved work was found", "'"+r.Name+"' was being edited "+r.Age+" when the program ended.",
-		answer{"Recover it", func() { w.did(w.desk.Recover(r.ID)) }},
-		answer{"Discard it", func() { w.desk.DropRecovery(r.ID); w.offer(list[1:]) }})
+	w.dialog("Unsaved work was found", "'"+r.Name+"' was being edited "+r.Age+" when the program ended.", []answer{
+		{"Recover it", func() { w.did(w.desk.Recover(r.ID)) }},
+		{"Discard it", func() { w.desk.DropRecovery(r.ID); w.offer(list[1:]) }},
+		{"Ask at the next start", nothing},
+	})
 }
 
 func (w *Window) askAboutDisk(s session.State) {

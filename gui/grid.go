@@ -1,6 +1,8 @@
 package gui
 
 import (
+	"slices"
+
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
@@ -19,6 +21,9 @@ type Grid struct {
 
 	focused     bool
 	row, column int // of the frame
+
+	measured      *gridLayout // of the width below; nil after a change
+	measuredWidth float32
 }
 
 // GridColumn is a heading.
@@ -40,16 +45,20 @@ var (
 	_ desktop.Cursorable = (*Grid)(nil)
 )
 
-// NewGrid returns a table without rows.
-func NewGrid(columns []GridColumn, cell func(row, column int)) *Grid {
-	g := &Grid{Columns: columns, OnCell: cell}
+// NewGrid returns an empty table.
+func NewGrid(cell func(row, column int)) *Grid {
+	g := &Grid{OnCell: cell}
 	g.ExtendBaseWidget(g)
 	return g
 }
 
-// Set changes the rows.
-func (g *Grid) Set(rows []GridRow) {
-	g.Rows = rows
+// Set changes columns and rows.
+func (g *Grid) Set(columns []GridColumn, rows []GridRow) {
+	same := func(a, b GridRow) bool { return a.Chosen == b.Chosen && slices.Equal(a.Cells, b.Cells) }
+	if slices.Equal(columns, g.Columns) && slices.EqualFunc(rows, g.Rows, same) {
+		return
+	}
+	g.Columns, g.Rows = columns, rows
 	g.moveFrame(0, 0)
 	g.Refresh()
 }

@@ -48,8 +48,15 @@ func (g *Grid) aligned(p *Prose, column int) *Prose {
 	return p
 }
 
-// measure places everything in a width.
+// measure places everything in a width; the last answer is kept until a refresh.
 func (g *Grid) measure(width float32) *gridLayout {
+	if g.measured == nil || g.measuredWidth != width {
+		g.measured, g.measuredWidth = g.arrange(width), width
+	}
+	return g.measured
+}
+
+func (g *Grid) arrange(width float32) *gridLayout {
 	n := len(g.Columns)
 	least, wish, needed := make([]float32, n), make([]float32, n), float32(0)
 	for column := range n {

@@ -1,6 +1,8 @@
 package gui
 
 import (
+	"slices"
+
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 )
@@ -28,6 +30,7 @@ func (r *gridRenderer) MinSize() fyne.Size {
 }
 
 func (r *gridRenderer) Refresh() {
+	r.grid.measured = nil
 	r.Layout(r.grid.Size())
 	canvas.Refresh(r.grid)
 }
@@ -44,7 +47,7 @@ func (r *gridRenderer) Layout(size fyne.Size) {
 	for _, y := range l.lines {
 		r.parts = append(r.parts, filled(fyne.NewPos(0, y), fyne.NewSize(size.Width, lineThin), ColorEdge))
 	}
-	for _, text := range append(l.titles, l.texts...) {
+	for _, text := range slices.Concat(l.titles, l.texts) {
 		text.prose.Move(text.at)
 		text.prose.Resize(text.size)
 		r.parts = append(r.parts, text.prose)

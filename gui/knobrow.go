@@ -30,7 +30,7 @@ const knobHigh = 36
 // NewKnobRow returns a row without a value.
 func NewKnobRow(label *KnobLabel, field *ValueField, slider *KnobSlider) *KnobRow {
 	r := &KnobRow{label: label, field: field, slider: slider, FieldWidth: px(120),
-		note: NewProse("", textAxis, 2).soft().right(), fault: NewFault("", textAxis)}
+		note: NewProse("", textAxis, 2).soft().right(), fault: NewFault("", textAxis, 0)}
 	r.note.Hide()
 	r.fault.Hide()
 	r.slider.Hide()
@@ -42,12 +42,7 @@ func NewKnobRow(label *KnobLabel, field *ValueField, slider *KnobSlider) *KnobRo
 // track are shown for the knob at hand.
 func (r *KnobRow) Set(f session.Field, preview string, track *session.Track, atHand bool) {
 	r.label.Set(f.Label, origin(f))
-	r.field.Name, r.field.Inherited = f.Label, f.Inherited
-	refused := f.Pending
-	if f.Reason == "" {
-		refused = ""
-	}
-	r.field.Set(f.Text, session.Symbol(f.Unit), refused)
+	r.field.Set(f)
 	r.fault.SetText(f.Reason)
 	show(r.fault, f.Reason != "")
 	r.SetNote(preview)

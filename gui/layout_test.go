@@ -10,6 +10,7 @@ import (
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/test"
+	"fyne.io/fyne/v2/widget"
 )
 
 // rect is a place in the window.
@@ -130,7 +131,10 @@ func (s *survey) text(o *canvas.Text, at fyne.Position, in sight, parents []fyne
 	if out := in.beyond(place); out > layoutSlack {
 		s.complain("text %q reaches out of the window by %.1f", o.Text, out)
 	}
-	for _, parent := range parents {
+	for _, parent := range slices.Backward(parents) {
+		if _, toolkit := parent.(*widget.RichText); toolkit {
+			break // a dialog leaves its title's label at any size
+		}
 		if w, ok := parent.(fyne.Widget); ok && place.right-place.left > w.Size().Width+layoutSlack {
 			s.complain("text %q is wider than the %T it stands in", o.Text, w)
 		}
@@ -175,7 +179,7 @@ func (b *bench) checkLayout(when string) {
 }
 
 func TestLayoutComplaints(t *testing.T) {
-	test.NewApp()
+	test.NewApp().Settings().SetTheme(NewTheme(Light, 1))
 	at := func(o fyne.CanvasObject, x, y, w, h float32) fyne.CanvasObject {
 		o.Move(fyne.NewPos(x, y))
 		o.Resize(fyne.NewSize(w, h))
@@ -189,9 +193,9 @@ func TestLayoutComplaints(t *testing.T) {
 	}{
 		{"good", []fyne.CanvasObject{at(NewProse("a text of some length", textBody, 1), 0, 0, wide, 20), at(NewButton("press", func() {}), 0, 40, 80, 32)}, ""},
 		{"cut", []fyne.CanvasObject{at(NewProse("a text of some length", textBody, 1), 0, 0, wide/2, 20)}, "is cut"},
-		{"outside", []fyne.CanvasObject{at(canvas.NewText("outside", nil), 290, 0, 50, 20)}, "reaches out"},
-		{"text on text", []fyne.CanvasObject{at(canvas.NewText("one", nil), 0, 0, 50, 20), at(canvas.NewText("two", nil), 4, 4, 50, 20)}, "overlaps"},
-		{"text on button", []fyne.CanvasObject{at(NewButton("press", func() {}), 0, 0, 80, 32), at(canvas.NewText("two", nil), 60, 20, 50, 20)}, "overlaps"},
+		{"outside", []fyne.CanvasObject{at(canvas.NewText("outside", tint(ColorInk)), 290, 0, 50, 20)}, "reaches out"},
+		{"text on text", []fyne.CanvasObject{at(canvas.NewText("one", tint(ColorInk)), 0, 0, 50, 20), at(canvas.NewText("two", tint(ColorInk)), 4, 4, 50, 20)}, "overlaps"},
+		{"text on button", []fyne.CanvasObject{at(NewButton("press", func() {}), 0, 0, 80, 32), at(canvas.NewText("two", tint(ColorInk)), 60, 20, 50, 20)}, "overlaps"},
 		{"button on button", []fyne.CanvasObject{at(NewButton("a", func() {}), 0, 0, 80, 32), at(NewButton("b", func() {}), 40, 0, 80, 32)}, "overlaps"},
 	} {
 		box := container.NewWithoutLayout(tc.objects...)

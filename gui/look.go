@@ -54,6 +54,7 @@ func (l look) keep(folder string) error {
 // choose wears a look and remembers it.
 func (w *Window) choose(l look) {
 	w.wear(l)
+	w.menu.bar.Refresh() // its height changes with the text, and so does the place below it
 	w.arrange()
 	w.Echo()
 	w.content.Refresh()

@@ -15,7 +15,7 @@ type menus struct {
 	undo, redo *fyne.MenuItem
 	apply      *fyne.MenuItem
 	recent     *fyne.MenuItem
-	shown      menuWords
+	shown      *menuWords // nil before the first
 }
 
 // menuWords is what the items say; the bar is built anew only where it changed.
@@ -70,8 +70,6 @@ func (w *Window) fileMenu() *fyne.Menu {
 		quit)
 }
 
-func nothing() {}
-
 // digitKey is the key of the first, second, ... entry of a list.
 func digitKey(i int) fyne.KeyName {
 	return fyne.KeyName(string(rune('1' + min(i, 8))))
@@ -90,8 +88,13 @@ func (w *Window) editMenu() *fyne.Menu {
 		shortcut("Paste", &fyne.ShortcutPaste{}, func() { w.forward(&fyne.ShortcutPaste{Clipboard: clipboard}) }),
 		shortcut("Select all", &fyne.ShortcutSelectAll{}, func() { w.forward(&fyne.ShortcutSelectAll{}) }),
 		fyne.NewMenuItemSeparator(),
+		item("Inherit the value again", fyne.KeyBackspace, ctrl, func() { w.onFocused(w.desk.Clear) }),
+		item("Back to the saved value", fyne.KeyBackspace, ctrl|fyne.KeyModifierShift, func() { w.onFocused(w.desk.Reset) }),
+		item("Next unit", fyne.KeyU, ctrl, func() { w.onFocused(w.nextUnit) }),
+		item("Explain the value", fyne.KeyE, ctrl, w.explainFocused),
+		fyne.NewMenuItemSeparator(),
 		w.menu.apply,
-		item("Judge again", fyne.KeyR, ctrl, func() { w.desk.Retry(); w.Echo() }),
+		item("Judge again", fyne.KeyR, ctrl, w.retry),
 		item("Stop judging", fyne.KeyPeriod, ctrl, func() { w.desk.Stop(); w.Echo() }))
 }
 
@@ -115,7 +118,6 @@ func (w *Window) viewMenu() *fyne.Menu {
 		fyne.NewMenuItemSeparator(),
 		item("Next page", fyne.KeyPageDown, ctrl, func() { w.nextPage(+1) }),
 		item("Previous page", fyne.KeyPageUp, ctrl, func() { w.nextPage(-1) }),
-		item("Explain the value", fyne.KeyE, ctrl, w.explainFocused),
 		item("Knobs in a narrow window", fyne.KeyF2, 0, w.toggleDrawer))
 }
 
@@ -143,10 +145,10 @@ func (w *Window) refreshMenu() {
 	for _, path := range s.Recent {
 		words.recent += path + "\n"
 	}
-	if w.menu.bar == nil || words == w.menu.shown {
+	if w.menu.bar == nil || w.menu.shown != nil && words == *w.menu.shown {
 		return
 	}
-	w.menu.shown = words
+	w.menu.shown = &words
 	name(w.menu.undo, "Undo", s.Undo)
 	name(w.menu.redo, "Redo", s.Redo)
 	w.menu.apply.Disabled = !words.advice

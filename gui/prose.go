@@ -2,8 +2,6 @@ package gui
 
 import (
 	"strings"
-	"unicode"
-	"unicode/utf8"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -89,30 +87,6 @@ func (p *Prose) style(word string) fyne.TextStyle {
 	return fyne.TextStyle{Bold: p.Bold}
 }
 
-// sansLacks are the signs that we use and the built-in sans does not have.
-const sansLacks = "−∞≤≥→←≈√∏∂∑∫⟨⟩"
-
-// needsMono reports whether a word is a number, with or without a mark before it,
-// or has a sign that the built-in sans lacks.
-func needsMono(word string) bool {
-	if strings.ContainsAny(word, sansLacks) {
-		return true
-	}
-	for _, r := range word {
-		if unicode.IsDigit(r) {
-			return true
-		}
-		if unicode.IsLetter(r) || r == '\'' {
-			return false
-		}
-	}
-	return false
-}
-
-func measure(text string, size float32, style fyne.TextStyle) (fyne.Size, float32) {
-	return fyne.CurrentApp().Driver().RenderedTextSize(text, size, style, nil)
-}
-
 // slack is how far a text may reach out of its width: less than a pixel, from sums
 // that round.
 const slack = 0.5
@@ -120,37 +94,9 @@ const slack = 0.5
 // dots end a text that does not fit.
 const dots = " ..."
 
-// run is a stretch of a line in one font.
-type run struct {
-	text  string
-	style fyne.TextStyle
-}
-
-// runs splits a line where the font changes. The space between two runs stands in
-// the sans, where it is narrower.
-func (p *Prose) runs(line string) []run {
-	var list []run
-	for i, word := range strings.Split(line, " ") {
-		style := p.style(word)
-		n := len(list)
-		switch {
-		case i == 0:
-			list = append(list, run{word, style})
-		case list[n-1].style == style:
-			list[n-1].text += " " + word
-		case style.Monospace:
-			list[n-1].text += " "
-			list = append(list, run{word, style})
-		default:
-			list = append(list, run{" " + word, style})
-		}
-	}
-	return list
-}
-
 func (p *Prose) lineWidth(line string) float32 {
 	width := float32(0)
-	for _, r := range p.runs(line) {
+	for _, r := range runsOf(line, p.style) {
 		size, _ := measure(r.text, px(p.TextSize), r.style)
 		width += size.Width
 	}
@@ -177,33 +123,6 @@ func (p *Prose) wrap(width float32) []string {
 		lines = append(lines, line)
 	}
 	return p.clip(lines, width)
-}
-
-// pieces splits a text at its spaces, but keeps a number and its unit together.
-func pieces(text string) []string {
-	var list []string
-	number := false
-	for _, word := range strings.Split(text, " ") {
-		if number && isUnit(word) {
-			list[len(list)-1] += " " + word
-			number = false
-			continue
-		}
-		list = append(list, word)
-		last, _ := utf8.DecodeLastRuneInString(word)
-		number = unicode.IsDigit(last)
-	}
-	return list
-}
-
-// isUnit reports whether a word, without the marks around it, is a unit.
-func isUnit(word string) bool {
-	switch strings.Trim(word, ".,;:()") {
-	case "Hz", "kHz", "MHz", "Er", "W", "mW", "µW", "kW", "G", "mG", "T", "mT", "ms", "s", "µs",
-		"nm", "µm", "mm", "a0", "nK", "µK", "kB", "ħ/J", "%", "Hz/site²":
-		return true
-	}
-	return false
 }
 
 // clip keeps the lines that are drawn; the last one ends in dots where some are
@@ -299,7 +218,7 @@ func (r *proseRenderer) Layout(size fyne.Size) {
 // line adds the runs of a line, all on the baseline of the lowest.
 func (r *proseRenderer) line(line string, at fyne.Position) {
 	p := r.prose
-	list := p.runs(line)
+	list := runsOf(line, p.style)
 	ascent := float32(0)
 	for _, run := range list {
 		_, baseline := measure(run.text, px(p.TextSize), run.style)

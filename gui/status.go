@@ -52,7 +52,7 @@ func (l *StatusLine) Set(s session.State) {
 
 // Say shows a sentence until another is said; "" makes room for the states' own.
 func (l *StatusLine) Say(text string) {
-	l.said = text
+	l.said = oneLine(text)
 	l.left.Text = l.words()
 	l.Refresh()
 }

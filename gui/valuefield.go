@@ -66,19 +66,19 @@ func NewValueField(events FieldEvents) *ValueField {
 	return f
 }
 
-// Set shows a value, unless the field holds edits. A refused text is shown in
-// its place.
-func (f *ValueField) Set(text, unit, refused string) {
-	f.Unit = unit
-	f.Refused = refused != ""
+// Set shows a value of the plan, unless the field holds edits. A refused text
+// stands in the value's place.
+func (f *ValueField) Set(v session.Field) {
+	f.Name, f.Unit, f.Inherited = v.Label, session.Symbol(v.Unit), v.Inherited
+	f.Refused = v.Reason != ""
 	edited := f.Edited()
-	f.shown = text
+	f.shown = v.Text
 	switch {
 	case f.focused && edited:
-	case refused != "":
-		f.put(refused)
+	case f.Refused:
+		f.put(v.Pending)
 	default:
-		f.put(text)
+		f.put(v.Text)
 	}
 	f.Refresh()
 }

@@ -20,7 +20,8 @@ type VerdictBar struct {
 	widget.BaseWidget
 	Metrics Metrics
 	OnApply func(session.Advice)
-	OnRetry func()
+	OnWhy   func() // tells all about a failure, and tries again
+	OnOpen  func()
 
 	badge     *Badge
 	word      *Prose
@@ -29,16 +30,17 @@ type VerdictBar struct {
 	unapplied *Fault // how many texts are not in the plan
 	button    *Button
 	advice    *session.Advice
+	hasPlan   bool
 }
 
 var _ fyne.Widget = (*VerdictBar)(nil)
 
 // NewVerdictBar returns a bar without a verdict. key takes the keys that are not
 // the button's.
-func NewVerdictBar(apply func(session.Advice), retry func(), key func(*fyne.KeyEvent)) *VerdictBar {
-	v := &VerdictBar{OnApply: apply, OnRetry: retry, Metrics: metrics[fullFold],
+func NewVerdictBar(apply func(session.Advice), why, open func(), key func(*fyne.KeyEvent)) *VerdictBar {
+	v := &VerdictBar{OnApply: apply, OnWhy: why, OnOpen: open, Metrics: metrics[fullFold],
 		badge: NewBadge(metrics[fullFold].Badge), word: NewProse("", textVerdict, 1).bold(),
-		sentence: NewProse("", textBody, 2), fault: NewFault("", textBody), unapplied: NewFault("", textAxis)}
+		sentence: NewProse("", textBody, 2), fault: NewFault("", textBody, 2), unapplied: NewFault("", textAxis, 1)}
 	v.button = NewButton("", v.press)
 	v.button.OnKey = key
 	v.button.Hide()
@@ -48,13 +50,17 @@ func NewVerdictBar(apply func(session.Advice), retry func(), key func(*fyne.KeyE
 	return v
 }
 
-// press applies the advice, or judges again after a failure.
+// press opens a plan where there is none, applies the advice, or tells all about a
+// failure.
 func (v *VerdictBar) press() {
-	if v.advice == nil {
-		v.OnRetry()
-		return
+	switch {
+	case !v.hasPlan:
+		v.OnOpen()
+	case v.advice != nil:
+		v.OnApply(*v.advice)
+	default:
+		v.OnWhy()
 	}
-	v.OnApply(*v.advice)
 }
 
 // Set shows the verdict of a state; a stale one is soft.
@@ -73,7 +79,7 @@ func (v *VerdictBar) Set(s session.State) {
 			v.sentence.Text = "From before: " + s.Undo + "."
 		}
 	}
-	v.advice = verdict.Advice
+	v.advice, v.hasPlan = verdict.Advice, s.Plan != nil
 	if s.Fading {
 		v.advice = nil
 	}
@@ -113,12 +119,14 @@ func (v *VerdictBar) failure(s session.State) {
 		v.advice = nil
 	}
 	switch {
+	case !v.hasPlan:
+		v.button.SetText("Open a plan")
 	case s.Failure != nil:
-		v.button.SetText("Judge again")
+		v.button.SetText("Retry, or see all of it")
 	case v.advice != nil:
 		v.button.SetText(v.advice.Text)
 	}
-	show(v.button, s.Failure != nil || v.advice != nil)
+	show(v.button, !v.hasPlan || s.Failure != nil || v.advice != nil)
 }
 
 // notApplied counts the fields whose text is not in the plan.

@@ -80,7 +80,7 @@ func New(app fyne.App, opt Options) *Window {
 
 // build makes the parts.
 func (w *Window) build() {
-	w.bar = NewVerdictBar(w.apply, func() { w.desk.Retry(); w.Echo() }, w.key)
+	w.bar = NewVerdictBar(w.apply, w.tellFailure, w.askToOpen, w.key)
 	w.column = NewKnobColumn(w.desk, ColumnEvents{Echo: w.Echo, Leave: w.leave, Menu: w.fieldMenu, Key: w.key, Failed: w.say})
 	w.drawer = NewButton("Knobs (F2)", w.toggleDrawer)
 	w.drawer.OnKey = w.key

@@ -8,6 +8,7 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"reflect"
 	"strings"
 	"sync"
 	"testing"
@@ -203,8 +204,8 @@ func (s *screen) checkLog() {
 	}
 }
 
-// picture takes a screenshot of the window, waiting until it is drawn. It is kept
-// in the folder that HILLTOP_SHOTS names.
+// picture takes a screenshot of the window, waiting until it is drawn and stands
+// still. It is kept in the folder that HILLTOP_SHOTS names.
 func (s *screen) picture(name string) image.Image {
 	s.Helper()
 	folder := os.Getenv("HILLTOP_SHOTS")
@@ -213,18 +214,26 @@ func (s *screen) picture(name string) image.Image {
 	}
 	path := filepath.Join(folder, name+".png")
 	var shot image.Image
-	s.waitFor("picture that is not empty", func() bool {
-		s.do("import", "-window", s.window, path)
-		file, err := os.Open(path)
-		if err != nil {
-			s.Fatal(err)
-		}
-		defer file.Close()
-		if shot, err = png.Decode(file); err != nil {
-			s.Fatalf("%s: %v", path, err)
-		}
-		return !empty(shot)
+	s.waitFor("picture that is not empty and stands still", func() bool {
+		before := shot
+		shot = s.shoot(path)
+		return !empty(shot) && before != nil && reflect.DeepEqual(before, shot)
 	})
+	return shot
+}
+
+func (s *screen) shoot(path string) image.Image {
+	s.Helper()
+	time.Sleep(200 * time.Millisecond)
+	s.do("import", "-window", s.window, path)
+	data, err := os.ReadFile(path)
+	if err != nil {
+		s.Fatal(err)
+	}
+	shot, err := png.Decode(bytes.NewReader(data))
+	if err != nil {
+		s.Fatalf("%s: %v", path, err)
+	}
 	return shot
 }
 
