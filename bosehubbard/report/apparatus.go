@@ -36,9 +36,7 @@ func (j *Judge) judgeApparatus(ctx context.Context, p *plan.Plan) (*Report, erro
 	if err := b.addStages(r, &point); err != nil {
 		return nil, err
 	}
-	held := false
-	if b.hold, held = b.sequence.HoldTime(); !held {
-		b.hold = assumedHold(b.largestTunnelling(&point))
+	if !b.setHold(&point) {
 		r.Cautions = append(r.Cautions, holdCaution(b.hold))
 	}
 	r.HoldMS = b.hold * 1e3
@@ -55,6 +53,14 @@ func (j *Judge) judgeApparatus(ctx context.Context, p *plan.Plan) (*Report, erro
 	}
 	r.Sentence = r.sentence()
 	return r, nil
+}
+
+// setHold takes the trailing hold, or assumes one and reports false.
+func (b *bench) setHold(end *apparatus.Point) (held bool) {
+	if b.hold, held = b.sequence.HoldTime(); !held {
+		b.hold = assumedHold(b.largestTunnelling(end))
+	}
+	return held
 }
 
 func aimWord(s ceiling.Sign) string {

@@ -18,21 +18,14 @@ func judgeModel(ctx context.Context, p *plan.Plan) (*Report, error) {
 	r := &Report{Title: p.Title, AimSign: aimWord(sign), Stages: []Stage{}}
 	end := startOf(p.Model)
 	r.Start = modelStage("start", 0, end)
-	time, hold, held := 0.0, 0.0, false
+	time := 0.0
 	for _, s := range p.Stages {
 		end = after(end, s)
 		time += s.DurationMS
 		r.Stages = append(r.Stages, *modelStage(s.Name, time, end))
-		if hold, held = hold+s.DurationMS*1e-3, true; s.Shape != plan.Hold {
-			hold, held = 0, false
-		}
 	}
+	hold, held := modelHold(p, end)
 	if !held {
-		largest := 0.0
-		for _, a := range end.Axes {
-			largest = math.Max(largest, math.Abs(a.Tunnelling))
-		}
-		hold = assumedHold(largest)
 		r.Cautions = append(r.Cautions, holdCaution(hold))
 	}
 	r.HoldMS = hold * 1e3
@@ -51,6 +44,22 @@ func judgeModel(ctx context.Context, p *plan.Plan) (*Report, error) {
 	r.caution("model", "A model plan: the verdict is for a system without end at this filling; beams, loss and higher bands are not in it.")
 	r.Sentence = r.sentence()
 	return r, nil
+}
+
+// modelHold returns the trailing hold in s, or the assumed one, for the model at
+// the end.
+func modelHold(p *plan.Plan, end bosehubbard.Model) (hold float64, held bool) {
+	for i := len(p.Stages) - 1; i >= 0 && p.Stages[i].Shape == plan.Hold; i-- {
+		hold, held = hold+p.Stages[i].DurationMS*1e-3, true
+	}
+	if held {
+		return hold, true
+	}
+	largest := 0.0
+	for _, a := range end.Axes {
+		largest = math.Max(largest, math.Abs(a.Tunnelling))
+	}
+	return assumedHold(largest), false
 }
 
 func startOf(m *plan.Model) bosehubbard.Model {
