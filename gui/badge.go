@@ -24,6 +24,7 @@ type Badge struct {
 
 	Verdict string
 	Floor   bool    // the bound that counts is the floor
+	Stale   bool    // the verdict is of before: dashed, in soft ink
 	Side    float32 // at 100 % text
 }
 
@@ -37,9 +38,9 @@ func NewBadge(side float32) *Badge {
 }
 
 // set changes the shape.
-func (b *Badge) set(verdict string, floor bool) {
-	if b.Verdict != verdict || b.Floor != floor {
-		b.Verdict, b.Floor = verdict, floor
+func (b *Badge) set(verdict string, floor, stale bool) {
+	if b.Verdict != verdict || b.Floor != floor || b.Stale != stale {
+		b.Verdict, b.Floor, b.Stale = verdict, floor, stale
 		b.Refresh()
 	}
 }
@@ -90,7 +91,7 @@ const (
 
 func (r *badgeRenderer) Layout(size fyne.Size) {
 	r.parts = nil
-	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, units: badgeUnits, flip: r.badge.Floor, stroke: lineNormal,
+	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, units: badgeUnits, flip: r.badge.Floor, stale: r.badge.Stale, stroke: lineNormal,
 		add: func(o fyne.CanvasObject) { r.parts = append(r.parts, o) }}
 	if pen.unit < 2./3 {
 		pen.stroke = lineThin // an outline must not fill the bar of a small mark
@@ -110,8 +111,7 @@ func (r *badgeRenderer) Layout(size fyne.Size) {
 		pen.bar(30, barBottom, ColorRed)
 		pen.strips()
 	default:
-		u := pen.unit
-		r.parts = dashed(fyne.NewPos(barLeft*u, lidTop*u), fyne.NewSize((barRight-barLeft)*u, (barBottom-lidTop)*u), 1, 3, 3, ColorSoftInk)
+		pen.dashes(lidTop, barBottom)
 	}
 }
 
@@ -121,6 +121,7 @@ type pen struct {
 	unit  float32
 	units float32
 	flip  bool
+	stale bool
 	// stroke is the width of an outline, in pixels.
 	stroke float32
 	add    func(fyne.CanvasObject)
@@ -131,14 +132,32 @@ func (p pen) rect(left, top, right, bottom float32, fill fyne.ThemeColorName) {
 	if p.flip {
 		top, bottom = p.units-bottom, p.units-top
 	}
+	if p.stale {
+		fill = ColorSoftInk
+	}
 	p.add(filled(fyne.NewPos(left*p.unit, top*p.unit), fyne.NewSize((right-left)*p.unit, (bottom-top)*p.unit), fill))
 }
 
 // bar is a filled bar with an ink outline.
 func (p pen) bar(top, bottom float32, fill fyne.ThemeColorName) {
+	if p.stale {
+		p.dashes(top, bottom)
+		return
+	}
 	edge := p.stroke / p.unit
 	p.rect(barLeft, top, barRight, bottom, ColorInk)
 	p.rect(barLeft+edge, top+edge, barRight-edge, bottom-edge, fill)
+}
+
+// dashes is the outline of a bar of which nothing is known now.
+func (p pen) dashes(top, bottom float32) {
+	if p.flip {
+		top, bottom = p.units-bottom, p.units-top
+	}
+	at, size := fyne.NewPos(barLeft*p.unit, top*p.unit), fyne.NewSize((barRight-barLeft)*p.unit, (bottom-top)*p.unit)
+	for _, o := range dashed(at, size, 1, 3, 3, ColorSoftInk) {
+		p.add(o)
+	}
 }
 
 // lid is a whole lid whose ends turn inward.
@@ -183,7 +202,11 @@ func (p pen) line(x1, y1, x2, y2, width float32) {
 	if p.flip {
 		y1, y2 = p.units-y1, p.units-y2
 	}
-	o := canvas.NewLine(tint(ColorInk))
+	ink := ColorInk
+	if p.stale {
+		ink = ColorSoftInk
+	}
+	o := canvas.NewLine(tint(ink))
 	o.StrokeWidth = width
 	o.Position1 = fyne.NewPos(x1*p.unit, y1*p.unit)
 	o.Position2 = fyne.NewPos(x2*p.unit, y2*p.unit)

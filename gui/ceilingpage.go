@@ -115,7 +115,7 @@ func (p *CeilingPage) showCriteria(s session.State) {
 	}
 	p.criteria.Objects = p.criteria.Objects[:0]
 	for i, c := range list {
-		shown := criterion{name: c.Name, detail: minusSigns(c.Detail), margin: quantity(c.Margin, c.Unit), verdict: sealed, floor: isFloor(s)}
+		shown := criterion{name: c.Name, detail: minusSigns(c.Detail), margin: quantity(c.Margin, c.Unit), verdict: sealed, floor: isFloor(s), stale: s.Fading}
 		if !c.Passed {
 			shown.verdict = c.Breaks
 			if advice, ok := p.tools.desk.AdviceFor(c.Name); ok && !s.Fading {
@@ -143,6 +143,7 @@ func (p *CeilingPage) showTerms(s session.State) {
 	}
 	p.termIDs = append(p.termIDs, "total")
 	total := s.Report.Ceiling.Total
+	p.terms.Fade(s.Fading)
 	p.terms.Set(termColumns, append(rows, GridRow{Chosen: true, Cells: []string{
 		screenName("total"),
 		boundText(total.Floor.Known, total.Floor.Unbounded(), total.Floor.Hz),
@@ -186,6 +187,7 @@ func (p *CeilingPage) showStages(s session.State) {
 			rows[i].Cells = append(rows[i].Cells, column.cell(r))
 		}
 	}
+	p.stages.Fade(s.Fading)
 	p.stages.Set(columns, rows)
 }
 

@@ -38,7 +38,7 @@ func newCriterionRow(tools pageTools) *CriterionRow {
 // criterion is what a row shows.
 type criterion struct {
 	name, detail, margin, verdict string
-	floor                         bool
+	floor, stale                  bool
 	mend                          string // on the button; "" for none
 }
 
@@ -48,7 +48,12 @@ func (r *CriterionRow) set(c criterion) {
 		return
 	}
 	r.shown = &c
-	r.mark.set(c.verdict, c.floor)
+	r.mark.set(c.verdict, c.floor, c.stale)
+	ink := ColorInk
+	if c.stale {
+		ink = ColorSoftInk
+	}
+	r.name.Color, r.margin.text.Color = ink, ink
 	r.name.Text = screenName(c.name)
 	r.name.Bold = c.verdict != sealed
 	r.margin.Set(c.margin, c.name)

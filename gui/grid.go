@@ -19,6 +19,7 @@ type Grid struct {
 	OnCell  func(row, column int)
 	OnKey   func(*fyne.KeyEvent) // keys that are not the grid's; may be nil
 
+	faded       bool // the texts are of before: soft
 	focused     bool
 	row, column int // of the frame
 
@@ -61,6 +62,14 @@ func (g *Grid) Set(columns []GridColumn, rows []GridRow) {
 	g.Columns, g.Rows = columns, rows
 	g.moveFrame(0, 0)
 	g.Refresh()
+}
+
+// Fade makes the texts soft, or not.
+func (g *Grid) Fade(faded bool) {
+	if g.faded != faded {
+		g.faded = faded
+		g.Refresh()
+	}
 }
 
 // moveFrame moves the frame by rows and columns, within the table.

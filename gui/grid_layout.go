@@ -38,6 +38,9 @@ func (g *Grid) title(column int) *Prose {
 func (g *Grid) text(row, column int) *Prose {
 	p := NewProse(g.Rows[row].Cells[column], textBody, 0)
 	p.Bold = column == 0 && g.Rows[row].Chosen
+	if g.faded {
+		p.Color = ColorSoftInk
+	}
 	return g.aligned(p, column)
 }
 

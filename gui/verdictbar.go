@@ -66,7 +66,7 @@ func (v *VerdictBar) press() {
 // Set shows the verdict of a state; a stale one is soft.
 func (v *VerdictBar) Set(s session.State) {
 	verdict := s.Verdict
-	v.badge.set(strings.ToLower(verdict.Word), verdict.Aim == "positive")
+	v.badge.set(strings.ToLower(verdict.Word), isFloor(s), s.Fading)
 	v.word.Text = verdict.Word
 	v.sentence.Text = sentenceAlone(verdict)
 	if verdict.Word == "" {
@@ -115,7 +115,7 @@ func (v *VerdictBar) failure(s session.State) {
 	show(v.fault, s.Failure != nil)
 	show(v.sentence, s.Failure == nil)
 	if s.Failure != nil {
-		v.fault.SetText(strings.TrimSpace(s.Failure.Reason + " " + s.Failure.Cure))
+		v.fault.SetText(strings.TrimSuffix(s.Failure.Reason, ".") + ". " + s.Failure.Cure)
 		v.advice = nil
 	}
 	switch {
