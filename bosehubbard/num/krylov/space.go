@@ -1,0 +1,164 @@
+package krylov
+
+import (
+	"context"
+	"math"
+)
+
+// groupBlocks is the number of blocks between two looks at a context: some
+// milliseconds in the longest pass.
+const groupBlocks = 64
+
+// operation is what the blocks of a space are asked to do.
+type operation int
+
+const (
+	opNorm    operation = iota // partial = |x|^2
+	opRecur                    // w = a w + b v + c u, partial = |w|^2
+	opCombine                  // x = sum of coefficients times vectors, partial = |x|^2
+	opInner                    // partial, partialIm = <v|w>
+	opRemove                   // w -= (cr + i ci) v, partial = |w|^2
+)
+
+// space holds the Lanczos vectors, unnormalised, and does the passes over them
+// block by block.
+type space struct {
+	length  int
+	vectors []Vector
+	norms   []float64 // of the vectors
+
+	team               *team
+	partial, partialIm []float64 // per block
+
+	// Arguments of the pass that runs.
+	op           operation
+	w, v, u      Vector
+	a, b, c      float64
+	coefficients []complex128 // of the unnormalised vectors
+}
+
+func newSpace(length, vectors, workers int) *space {
+	blocks := (length + blockLength - 1) / blockLength
+	s := &space{
+		length: length, vectors: make([]Vector, vectors), norms: make([]float64, vectors),
+		team: newTeam(workers), partial: make([]float64, blocks), partialIm: make([]float64, blocks),
+		coefficients: make([]complex128, vectors),
+	}
+	for i := range s.vectors {
+		s.vectors[i] = NewVector(length)
+	}
+	return s
+}
+
+// block does the running operation on one block.
+func (s *space) block(number int) {
+	lo := number * blockLength
+	hi := min(lo+blockLength, s.length)
+	w := s.w.slice(lo, hi)
+	switch s.op {
+	case opNorm:
+		s.partial[number] = sumSquares(w.Re) + sumSquares(w.Im)
+	case opRecur:
+		v, u := s.v.slice(lo, hi), s.u.slice(lo, hi)
+		s.partial[number] = recur(w.Re, v.Re, u.Re, s.a, s.b, s.c) + recur(w.Im, v.Im, u.Im, s.a, s.b, s.c)
+	case opCombine:
+		s.combineBlock(w, lo, hi)
+		s.partial[number] = sumSquares(w.Re) + sumSquares(w.Im)
+	case opInner:
+		v := s.v.slice(lo, hi)
+		s.partial[number] = dot(v.Re, w.Re) + dot(v.Im, w.Im)
+		s.partialIm[number] = dot(v.Re, w.Im) - dot(v.Im, w.Re)
+	case opRemove:
+		v := s.v.slice(lo, hi)
+		axpy(w.Re, v.Re, -s.a)
+		axpy(w.Re, v.Im, s.b)
+		axpy(w.Im, v.Re, -s.b)
+		axpy(w.Im, v.Im, -s.a)
+		s.partial[number] = sumSquares(w.Re) + sumSquares(w.Im)
+	}
+}
+
+// combineBlock sums the vectors in pairs.
+func (s *space) combineBlock(x Vector, lo, hi int) {
+	clear(x.Re)
+	clear(x.Im)
+	for k := 0; k < len(s.coefficients); k += 2 {
+		first, second, c := s.vectors[k].slice(lo, hi), s.vectors[k].slice(lo, hi), complex128(0)
+		if k+1 < len(s.coefficients) {
+			second, c = s.vectors[k+1].slice(lo, hi), s.coefficients[k+1]
+		}
+		rotate(x.Re, x.Im, first, second, s.coefficients[k], c)
+	}
+}
+
+func (v Vector) slice(lo, hi int) Vector { return Vector{Re: v.Re[lo:hi], Im: v.Im[lo:hi]} }
+
+// pass runs an operation and returns the sum of the partial results in order. It
+// looks at ctx between groups of blocks.
+func (s *space) pass(ctx context.Context, op operation) (float64, error) {
+	s.op = op
+	for first := 0; first < len(s.partial); first += groupBlocks {
+		if err := ctx.Err(); err != nil {
+			return 0, err
+		}
+		s.team.run(s, first, min(first+groupBlocks, len(s.partial)))
+	}
+	sum := 0.0
+	for _, p := range s.partial {
+		sum += p
+	}
+	return sum, nil
+}
+
+// norm returns |x|.
+func (s *space) norm(ctx context.Context, x Vector) (float64, error) {
+	s.w = x
+	squared, err := s.pass(ctx, opNorm)
+	return math.Sqrt(squared), err
+}
+
+// recur turns vector j+1, which holds H times vector j, into the next one of the
+// recurrence and returns its norm, beta_j.
+func (s *space) recur(ctx context.Context, j int, alpha, betaBefore float64) (float64, error) {
+	s.w, s.v, s.u = s.vectors[j+1], s.vectors[j], s.vectors[j]
+	s.a, s.b, s.c = 1/s.norms[j], -alpha/s.norms[j], 0
+	if j > 0 {
+		s.u, s.c = s.vectors[j-1], -betaBefore/s.norms[j-1]
+	}
+	squared, err := s.pass(ctx, opRecur)
+	return math.Sqrt(squared), err
+}
+
+// combine sets dst to the sum of normalised vectors with the coefficients
+// re + i im and returns its norm.
+func (s *space) combine(ctx context.Context, dst Vector, re, im []float64) (float64, error) {
+	s.coefficients = s.coefficients[:len(re)]
+	for k := range re {
+		s.coefficients[k] = complex(re[k]/s.norms[k], im[k]/s.norms[k])
+	}
+	s.w = dst
+	squared, err := s.pass(ctx, opCombine)
+	return math.Sqrt(squared), err
+}
+
+// remove takes what vector j+1 has along the vectors 0 to j out of it and returns
+// its norm and that of the part removed.
+func (s *space) remove(ctx context.Context, j int) (norm, removed float64, err error) {
+	for k := range j + 1 {
+		s.w, s.v = s.vectors[j+1], s.vectors[k]
+		along, err := s.pass(ctx, opInner)
+		if err != nil {
+			return 0, 0, err
+		}
+		across := 0.0
+		for _, p := range s.partialIm {
+			across += p
+		}
+		s.a, s.b = along/(s.norms[k]*s.norms[k]), across/(s.norms[k]*s.norms[k])
+		removed = math.Hypot(removed, s.norms[k]*math.Hypot(s.a, s.b))
+		if norm, err = s.pass(ctx, opRemove); err != nil {
+			return 0, 0, err
+		}
+	}
+	return math.Sqrt(norm), removed, nil
+}
