@@ -11,8 +11,10 @@ import (
 	"log"
 	"os"
 	"os/signal"
+	"sync/atomic"
 	"syscall"
 
+	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/app"
 
 	"hilltop/gui"
@@ -41,13 +43,25 @@ func run(args []string, stderr io.Writer) int {
 	log.SetOutput(&quiet{to: stderr})
 	program := app.NewWithID(appID)
 	window := gui.New(program, opt)
-	stop := make(chan os.Signal, 1)
-	signal.Notify(stop, os.Interrupt, syscall.SIGTERM)
+	stopped := quitOnSignal(program)
+	window.Native().ShowAndRun()
+	if !stopped.Load() {
+		window.Close()
+	}
+	return 0
+}
+
+// quitOnSignal ends the program when it is told to from outside. Nobody was asked
+// about unsaved work then, so the window is not closed and its recovery copy
+// stays for the next start.
+func quitOnSignal(program fyne.App) *atomic.Bool {
+	var stopped atomic.Bool
+	signals := make(chan os.Signal, 1)
+	signal.Notify(signals, os.Interrupt, syscall.SIGTERM)
 	go func() {
-		<-stop
+		<-signals
+		stopped.Store(true)
 		gui.Post(program.Quit)
 	}()
-	window.Native().ShowAndRun()
-	window.Close()
-	return 0
+	return &stopped
 }

@@ -85,13 +85,18 @@ func TestMain(m *testing.M) {
 // for the window of a document.
 func start(t *testing.T, document string, args ...string) *screen {
 	t.Helper()
+	return startIn(t, t.TempDir(), document, args...)
+}
+
+// startIn is start with the settings and recovery files in a folder.
+func startIn(t *testing.T, folder, document string, args ...string) *screen {
+	t.Helper()
 	path, err := program()
 	if err != nil {
 		t.Fatalf("building the program: %v\n%s", err, path)
 	}
 	s := &screen{T: t, ended: make(chan error, 1)}
 	s.command = exec.Command(path, args...)
-	folder := t.TempDir()
 	s.command.Env = append(os.Environ(), "LANG=C.UTF-8", "XDG_STATE_HOME="+folder, "XDG_CONFIG_HOME="+folder)
 	s.command.Stdout, s.command.Stderr = &s.log, &s.log
 	if err := s.command.Start(); err != nil {

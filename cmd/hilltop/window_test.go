@@ -5,7 +5,9 @@ import (
 	"image/color"
 	"os"
 	"path/filepath"
+	"syscall"
 	"testing"
+	"time"
 
 	"hilltop/assets"
 	"hilltop/bosehubbard/plan"
@@ -104,6 +106,36 @@ func TestWindowAsksBeforeItLosesWork(t *testing.T) {
 	stages := saved(t, path).Stages
 	if got := stages[len(stages)-2].DepthEr[0]; got != 8 {
 		t.Errorf("depth x: got %g Er in the file, want 8", got)
+	}
+}
+
+// Told to end from outside, the program asks nothing, and offers the work at the
+// next start.
+func TestWindowRecoversAfterASignal(t *testing.T) {
+	needScreen(t)
+	folder, path := t.TempDir(), planFile(t, "skerry-demo", "lost.json")
+	s := startIn(t, folder, "lost.json", path)
+	s.keys("Tab", "Tab", "9", "Return")
+	s.waitForTitle("lost.json (edited) - Hilltop")
+	time.Sleep(2 * time.Second) // at most that much is lost
+	if err := s.command.Process.Signal(syscall.SIGTERM); err != nil {
+		t.Fatal(err)
+	}
+	if err := <-s.ended; err != nil {
+		t.Errorf("the program ended with %v", err)
+	}
+	s.checkLog()
+
+	s = startIn(t, folder, "skerry-demo")
+	s.picture("recovery")
+	s.keys("Return") // the first button recovers
+	s.waitForTitle("lost.json (edited) - Hilltop")
+	s.keys("ctrl+s")
+	s.waitForTitle("lost.json - Hilltop")
+	s.quit()
+	stages := saved(t, path).Stages
+	if got := stages[len(stages)-2].DepthEr[0]; got != 9 {
+		t.Errorf("depth x: got %g Er in the file, want 9", got)
 	}
 }
 
