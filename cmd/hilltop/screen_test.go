@@ -227,6 +227,18 @@ func (s *screen) picture(name string) image.Image {
 	return shot
 }
 
+// write keeps a picture in a file.
+func (s *screen) write(path string, picture image.Image) {
+	s.Helper()
+	var b bytes.Buffer
+	if err := png.Encode(&b, picture); err != nil {
+		s.Fatal(err)
+	}
+	if err := os.WriteFile(path, b.Bytes(), 0o644); err != nil {
+		s.Fatal(err)
+	}
+}
+
 func (s *screen) shoot(path string) image.Image {
 	s.Helper()
 	time.Sleep(200 * time.Millisecond)

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"flag"
 	"image"
 	"image/color"
 	"os"
@@ -139,6 +140,8 @@ func TestWindowRecoversAfterASignal(t *testing.T) {
 	}
 }
 
+var update = flag.Bool("update", false, "take the README's screenshot anew")
+
 // The three folds, light and dark, on a real display.
 func TestWindowLooks(t *testing.T) {
 	needScreen(t)
@@ -154,6 +157,9 @@ func TestWindowLooks(t *testing.T) {
 		t.Run(look.name, func(t *testing.T) {
 			s := start(t, "skerry-demo", "--size", look.size, "--variant", look.variant, "--text-scale", look.scale)
 			shot := s.picture(look.name)
+			if *update && look.name == "full" {
+				s.write(filepath.Join("..", "..", "assets", "screenshot.png"), shot)
+			}
 			if dark := luma(shot, shot.Bounds().Dx()-40, shot.Bounds().Dy()/2) < 0x8000; dark != look.dark {
 				t.Errorf("the page is dark: %v, want %v", dark, look.dark)
 			}
