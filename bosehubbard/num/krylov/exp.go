@@ -14,8 +14,8 @@ type Report struct {
 
 // Exp replaces psi by exp(-i tau H) psi in as many steps as the largest dimension
 // asks for. tau may be negative. The errors of the steps add up to at most
-// tolerance, relative to |psi|, rounding errors included; the report has the sum
-// of their bounds. No allocation.
+// tolerance, relative to |psi|, apart from some units of rounding in each; the
+// report has the sum of their bounds. No allocation with one worker.
 //
 // It returns the errors of [Propagator.Build]; psi then stands at a time in
 // between.

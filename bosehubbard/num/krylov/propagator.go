@@ -28,12 +28,12 @@ func (e *ToleranceError) Error() string {
 // Options of New. The zero value works.
 type Options struct {
 	Dimension int // largest dimension of the Krylov space, at least 2; 0: DefaultDimension
-	Workers   int // goroutines of the vector sums; below 2: none of its own
+	Workers   int // goroutines that share the vector sums; below 1: what the machine runs at once
 }
 
 // Propagator applies exp(-i tau H) to vectors of one length. It holds
-// Dimension + 1 complex vectors and is for one goroutine at a time. [New] starts
-// the goroutines of its workers, [Propagator.Close] ends them.
+// Dimension + 1 complex vectors and is for one caller at a time. Every number of
+// workers gives the same bits.
 type Propagator struct {
 	most  int
 	space *space
@@ -71,9 +71,6 @@ func New(n int, opt Options) *Propagator {
 // n complex components, apart from some kilobytes.
 func Bytes(n, dimension int) float64 { return 16 * float64(n) * float64(dimension+1) }
 
-// Close ends the goroutines. The propagator stays usable without them.
-func (p *Propagator) Close() { p.space.team.close() }
-
 // Dimension returns the dimension m of the space built last.
 func (p *Propagator) Dimension() int { return len(p.alpha) }
 
@@ -88,7 +85,7 @@ func (p *Propagator) Reorthogonalisations() int { return p.removals }
 //
 // It returns a time up to |tau| for which [Propagator.AdvanceTo] has an error of
 // at most tolerance*reach/|tau|, and the bound of the error there, both apart from
-// some units of rounding. No allocation.
+// some units of rounding. No allocation with one worker.
 //
 // It returns the errors of h, ctx.Err() if stopped, [ErrNotFinite], or a
 // *[ToleranceError].
@@ -236,7 +233,7 @@ func (p *Propagator) projected() (t tridiagonal, last float64) {
 // AdvanceTo sets dst to the approximation of exp(-i tau H) psi in the space built
 // last, tau of either sign, and returns its norm. Its error is known for |tau| up
 // to the reach. dst may be the psi given to [Propagator.Build]. Cost: as many
-// passes as the dimension; no allocation.
+// passes as the dimension; no allocation with one worker.
 //
 // It returns ctx.Err() if stopped.
 func (p *Propagator) AdvanceTo(ctx context.Context, dst Vector, tau float64) (norm float64, err error) {
@@ -250,7 +247,7 @@ func (p *Propagator) AdvanceTo(ctx context.Context, dst Vector, tau float64) (no
 }
 
 // PowerTo sets dst = H^power psi for the psi of the space built last, power less
-// than its dimension; a closed space has every power. No allocation.
+// than its dimension; a closed space has every power.
 //
 // It returns ctx.Err() if stopped. It panics if the space has too few dimensions.
 func (p *Propagator) PowerTo(ctx context.Context, dst Vector, power int) error {

@@ -3,11 +3,17 @@ package krylov
 import (
 	"context"
 	"math"
+
+	"hilltop/bosehubbard/num/blocks"
 )
 
-// groupBlocks is the number of blocks between two looks at a context: some
-// milliseconds in the longest pass.
-const groupBlocks = 64
+// blockLength is the number of components in one block of the vector sums. It is
+// fixed, so that sums are the same for any number of workers; two parts of three
+// vectors of it fit the first cache.
+const blockLength = 1024
+
+// fewBlocks take less time than it does to wake a goroutine.
+const fewBlocks = 8
 
 // operation is what the blocks of a space are asked to do.
 type operation int
@@ -27,8 +33,9 @@ type space struct {
 	vectors []Vector
 	norms   []float64 // of the vectors
 
-	team               *team
-	partial, partialIm []float64 // per block
+	workers            int
+	do                 func(worker, block int) // block, made once
+	partial, partialIm []float64               // per block
 
 	// Arguments of the pass that runs.
 	op           operation
@@ -38,12 +45,16 @@ type space struct {
 }
 
 func newSpace(length, vectors, workers int) *space {
-	blocks := (length + blockLength - 1) / blockLength
+	count := (length + blockLength - 1) / blockLength
+	if count < fewBlocks {
+		workers = 1
+	}
 	s := &space{
 		length: length, vectors: make([]Vector, vectors), norms: make([]float64, vectors),
-		team: newTeam(workers), partial: make([]float64, blocks), partialIm: make([]float64, blocks),
+		workers: blocks.Workers(workers), partial: make([]float64, count), partialIm: make([]float64, count),
 		coefficients: make([]complex128, vectors),
 	}
+	s.do = s.block
 	for i := range s.vectors {
 		s.vectors[i] = NewVector(length)
 	}
@@ -51,7 +62,7 @@ func newSpace(length, vectors, workers int) *space {
 }
 
 // block does the running operation on one block.
-func (s *space) block(number int) {
+func (s *space) block(_, number int) {
 	lo := number * blockLength
 	hi := min(lo+blockLength, s.length)
 	w := s.w.slice(lo, hi)
@@ -93,15 +104,11 @@ func (s *space) combineBlock(x Vector, lo, hi int) {
 
 func (v Vector) slice(lo, hi int) Vector { return Vector{Re: v.Re[lo:hi], Im: v.Im[lo:hi]} }
 
-// pass runs an operation and returns the sum of the partial results in order. It
-// looks at ctx between groups of blocks.
+// pass runs an operation and returns the sum of the partial results in order.
 func (s *space) pass(ctx context.Context, op operation) (float64, error) {
 	s.op = op
-	for first := 0; first < len(s.partial); first += groupBlocks {
-		if err := ctx.Err(); err != nil {
-			return 0, err
-		}
-		s.team.run(s, first, min(first+groupBlocks, len(s.partial)))
+	if err := blocks.Run(ctx, s.workers, len(s.partial), s.do); err != nil {
+		return 0, err
 	}
 	sum := 0.0
 	for _, p := range s.partial {
