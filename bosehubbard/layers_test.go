@@ -12,7 +12,8 @@ import (
 )
 
 // layers lists the packages from top to bottom: a package imports only packages
-// that stand below it. A name that ends in "/..." stands for a whole folder.
+// that stand below it. A name that ends in "/..." stands for a whole folder, but for
+// what has a line of its own.
 var layers = []string{
 	"gui",
 	"gui/session",
@@ -42,6 +43,7 @@ var layers = []string{
 	"bosehubbard/atom",
 	"bosehubbard/si",
 	"bosehubbard/num/...",
+	"bosehubbard/num/blocks",
 	"assets",
 	"testdata",
 }
@@ -52,9 +54,12 @@ func rank(pkg string) int {
 	if strings.HasPrefix(pkg, "cmd/") {
 		return 0
 	}
+	if i := slices.Index(layers, pkg); i >= 0 {
+		return i + 1
+	}
 	for i, name := range layers {
 		folder, wild := strings.CutSuffix(name, "/...")
-		if pkg == name || wild && (pkg == folder || strings.HasPrefix(pkg, folder+"/")) {
+		if wild && (pkg == folder || strings.HasPrefix(pkg, folder+"/")) {
 			return i + 1
 		}
 	}

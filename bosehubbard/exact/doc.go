@@ -3,11 +3,10 @@
 // where one of T = -0 sits.
 //
 // Conventions: energies are E/h in Hz and totals, not per atom. Small systems go
-// to a dense solver, others to one Lanczos run for both ends. Each end comes with
-// a residual, and an eigenvalue lies within it.
+// to a dense solver, others to one Lanczos run for both ends, in the sector of a
+// mirror where that is known to hold an end. Each end comes with a residual, and an
+// eigenvalue lies within it.
 //
-// This is the plain solver: one goroutine, hops by ranking, nothing reduced by
-// symmetry. Faster ones are checked against it.
-//
-// References: package fock for the basis, package num/lanczos for the method.
+// References: package fock for the operator, package num/lanczos for the method;
+// Perron and Frobenius for the sector of an end, from any text on matrices.
 package exact

@@ -64,15 +64,15 @@ func TestSolveTooLarge(t *testing.T) {
 			t.Errorf("%d atoms on 22 sites: refused after %v, want at once", atoms, spent)
 		}
 	}
-	l, m := mustChain(t, 12) // the largest size of the design fits 100 MB
-	if _, err := fock.Fit(l.Sites, 12, fock.Options{MemoryBytes: 1e8, Vectors: 5}); err != nil {
-		t.Errorf("12 atoms on 12 sites in 100 MB: %v", err)
+	l, m := mustChain(t, 12) // 1,352,078 states, half of them even
+	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 1.2e7}); err == nil {
+		t.Error("12 atoms on 12 sites fitted 12 MB, want a refusal: two vectors of half the space take 12.5 MB")
 	}
-	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 4e7}); err == nil {
-		t.Error("12 atoms on 12 sites fitted 40 MB, want a refusal: four vectors take 43 MB")
+	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 2.4e7, EndStates: true}); err == nil {
+		t.Error("12 atoms on 12 sites with end states fitted 24 MB, want a refusal: four vectors take 25 MB")
 	}
-	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 6e7, EndStates: true}); err == nil {
-		t.Error("12 atoms on 12 sites with end states fitted 60 MB, want a refusal: six vectors take 65 MB")
+	if _, err := Solve(context.Background(), l, m, 12, Options{MemoryBytes: 2.1e7, Sector: SectorWhole}); err == nil {
+		t.Error("12 atoms on 12 sites without the mirror fitted 21 MB, want a refusal: two vectors take 21.6 MB")
 	}
 }
 
@@ -142,7 +142,7 @@ func TestSolveLooksAtItsContext(t *testing.T) {
 	var shortest []time.Duration
 	for run := range 3 {
 		ctx := &polled{Context: context.Background(), last: time.Now()}
-		_, err := Solve(ctx, l, m, 13, Options{MaxIterations: 2, EndStates: true})
+		_, err := Solve(ctx, l, m, 13, Options{MaxIterations: 2, EndStates: true, Workers: 1})
 		var short *lanczos.NotConvergedError
 		if !errors.As(err, &short) {
 			t.Fatalf("2 iterations: %v, want a *lanczos.NotConvergedError", err)

@@ -16,10 +16,35 @@ const DefaultMemory = 4 << 30 // bytes
 // maxBytes stands for every larger need, so that figures stay finite.
 const maxBytes = 1e300
 
-// Options limits the memory of a basis or an operator. The zero value works.
+// Options of an operator. The zero value works.
 type Options struct {
-	MemoryBytes uint64 // memory that may be used; 0: AvailableMemory
-	Vectors     int    // vectors as long as the basis that will stand beside it; 0: two, x and y
+	MemoryBytes   uint64 // memory that may be used; 0: AvailableMemory
+	Vectors       int    // vectors that will stand beside the operator; 0: two, x and y
+	MaxOccupation int    // most atoms on one site; 0: no limit
+	Parity        int    // +1 or -1: only the states of that parity of Terms.Mirror; 0: all
+}
+
+// checked fills in the defaults and refuses options that make no sense.
+func (o Options) checked(sites, atoms int) (Options, error) {
+	if o.Vectors < 0 {
+		return o, fmt.Errorf("fock: %d vectors, want at least 0", o.Vectors)
+	}
+	if o.Parity < -1 || o.Parity > 1 {
+		return o, fmt.Errorf("fock: parity %d, want +1, -1 or 0", o.Parity)
+	}
+	if o.MaxOccupation < 0 {
+		return o, fmt.Errorf("fock: at most %d atoms on a site, want at least 1, or 0 for no limit", o.MaxOccupation)
+	}
+	if o.MaxOccupation > 0 && o.MaxOccupation < (atoms+sites-1)/sites {
+		return o, fmt.Errorf("fock: at most %d atoms on each of %d sites leave no room for %d", o.MaxOccupation, sites, atoms)
+	}
+	if o.Vectors == 0 {
+		o.Vectors = 2
+	}
+	if o.MemoryBytes == 0 {
+		o.MemoryBytes = AvailableMemory()
+	}
+	return o, nil
 }
 
 // TooLargeError says that a system does not fit the memory.
@@ -40,42 +65,118 @@ func (e *TooLargeError) Error() string {
 		e.Atoms, e.Sites, e.Dimension, bytesText(e.BytesWanted), bytesText(float64(e.BytesAvailable)), advice)
 }
 
-// Fit returns the dimension of a system if its operator and opt.Vectors vectors
-// fit the memory. It allocates nothing and takes microseconds for any arguments.
+// Fit returns the dimension of a chain if its operator and opt.Vectors vectors fit
+// the memory; other graphs need much the same. It allocates nothing and takes
+// microseconds for any arguments. It knows no limit of the occupation.
 //
 // It returns a *TooLargeError if they do not fit, and a plain error if
-// sites < 1, atoms < 0 or opt.Vectors < 0.
+// sites < 1, atoms < 0 or an option makes no sense.
 func Fit(sites, atoms int, opt Options) (int, error) {
 	if err := check(sites, atoms); err != nil {
 		return 0, err
 	}
-	if opt.Vectors < 0 {
-		return 0, fmt.Errorf("fock: %d vectors, want at least 0", opt.Vectors)
+	opt, err := opt.checked(sites, atoms)
+	if err != nil {
+		return 0, err
 	}
-	if opt.Vectors == 0 {
-		opt.Vectors = 2
-	}
-	if opt.MemoryBytes == 0 {
-		opt.MemoryBytes = AvailableMemory()
-	}
-	wanted := bytesWanted(sites, atoms, opt.Vectors)
+	wanted := bytesWanted(sites, atoms, opt)
 	if wanted <= float64(opt.MemoryBytes) && LogDimension(sites, atoms) < 43 { // e^43 < 2^63
 		return int(binomial(sites, atoms).Int64()), nil
 	}
-	return 0, &TooLargeError{
+	return 0, tooLarge(sites, atoms, wanted, opt)
+}
+
+func tooLarge(sites, atoms int, wanted float64, opt Options) *TooLargeError {
+	return &TooLargeError{
 		Sites: sites, Atoms: atoms, Dimension: dimensionText(sites, atoms),
 		BytesWanted: wanted, BytesAvailable: opt.MemoryBytes,
 		LargestSites: largestSites(sites, atoms, opt),
 	}
 }
 
-// bytesWanted counts the diagonal, the vectors and the table of binomials.
-func bytesWanted(sites, atoms, vectors int) float64 {
-	table := 0.0
-	if sites > 1 {
-		table = 8 * float64(sites) * (float64(atoms) + 2)
+// bytesWanted counts the vectors, the lists of a chain cut in the middle, and the
+// tables. All states of up to N atoms on m sites are as many as those of N on m+1;
+// each has some numbers of its own, and two entries for every hop that it allows.
+func bytesWanted(sites, atoms int, opt Options) float64 {
+	states := math.Exp(LogDimension(sites, atoms))
+	bytes := tableBytes(sites, atoms)
+	list := func(m, space int) { // m sites, as many states as all atoms have on space sites
+		bytes += stateBytes*math.Exp(LogDimension(space, atoms)) +
+			hopBytes*2*float64(m-1)*math.Exp(LogDimension(space, max(atoms-1, 0)))
 	}
-	return min(8*math.Exp(LogDimension(sites, atoms))*(1+float64(vectors))+table, maxBytes)
+	switch {
+	case opt.Parity != 0 && sites > 1:
+		states /= 2
+		list(sites/2, sites/2+1)
+	case sites > 2:
+		list(sites/2, sites/2+1)
+		list(sites-sites/2, sites-sites/2+1)
+	case sites == 2: // not cut
+		list(2, 2)
+	}
+	return min(bytes+8*states*float64(opt.Vectors), maxBytes)
+}
+
+// Bytes of a state of one half, with its place in two ladders, and of a hop.
+const (
+	stateBytes = 8 + 8 + 4 + 2*12
+	hopBytes   = 12
+)
+
+// tableBytes is the size of the tables of both halves.
+func tableBytes(sites, atoms int) float64 {
+	if sites == 1 {
+		return 0
+	}
+	return 8 * (float64(sites) + 2) * (float64(atoms) + 1)
+}
+
+// fitTables refuses, before anything is allocated, what is too large without any
+// doubt: tables that do not fit, and where the occupation is not limited, vectors.
+func (o Options) fitTables(sites, atoms int) error {
+	wanted := tableBytes(sites, atoms)
+	if o.MaxOccupation == 0 || o.MaxOccupation >= atoms {
+		wanted = bytesWanted(sites, atoms, o)
+		wanted -= wanted / 20 // the lists are only estimated: leave it to fit
+	}
+	if wanted > float64(o.MemoryBytes) {
+		return tooLarge(sites, atoms, wanted/0.95, o)
+	}
+	return nil
+}
+
+// fit refuses an operator whose vectors and lists, counted before they are built,
+// do not fit the memory.
+func (h *Operator) fit(opt Options) error {
+	bytes := 8*float64(h.length)*float64(opt.Vectors) + h.listBytes() + tableBytes(h.terms.Sites, h.atoms)
+	if bytes > float64(opt.MemoryBytes) || h.length > math.MaxInt/16 {
+		e := tooLarge(h.terms.Sites, h.atoms, bytes, opt)
+		if h.most < h.atoms {
+			e.Dimension = strconv.Itoa(h.dimension)
+		}
+		return e
+	}
+	return nil
+}
+
+// listBytes counts what the operator will hold of the halves.
+func (h *Operator) listBytes() float64 {
+	bytes := 0.0
+	rows, cols := map[int]bool{}, map[int]bool{}
+	if h.parity != 0 {
+		rows = cols
+	}
+	count := func(p *part, seen map[int]bool, t int) {
+		if !seen[t] {
+			seen[t] = true
+			bytes += stateBytes*float64(p.count(t)) + hopBytes*float64(p.numberOfHops(t))
+		}
+	}
+	for i := range h.blocks {
+		count(h.left, rows, h.blocks[i].left)
+		count(h.right, cols, h.blocks[i].right)
+	}
+	return bytes + 200*float64(len(h.blocks))
 }
 
 // largestSites bisects for the largest L' < sites whose ceil(N L'/sites) atoms fit.
@@ -83,7 +184,7 @@ func bytesWanted(sites, atoms, vectors int) float64 {
 func largestSites(sites, atoms int, opt Options) int {
 	fits := func(l int) bool {
 		n := math.Ceil(float64(atoms) * (float64(l) / float64(sites)))
-		return bytesWanted(l, int(min(n, float64(atoms))), opt.Vectors) <= float64(opt.MemoryBytes)
+		return bytesWanted(l, int(min(n, float64(atoms))), opt) <= float64(opt.MemoryBytes)
 	}
 	low, high := 0, sites // low fits, high does not
 	for high-low > 1 {

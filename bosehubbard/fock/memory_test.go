@@ -15,19 +15,22 @@ func TestFitCountsTheStates(t *testing.T) {
 	}
 }
 
-// The need is 8 bytes times D (1 + vectors), and the table of binomials.
+// The need is that of bytesWanted, and one byte decides.
 func TestFitAtTheEdge(t *testing.T) {
-	const need = 8*92378*(1+3) + 8*10*(10+2)
-	if _, err := Fit(10, 10, Options{MemoryBytes: need + 1, Vectors: 3}); err != nil {
+	need := bytesWanted(10, 10, Options{Vectors: 3})
+	if vectors := 8.0 * 92378 * 3; need < vectors || need > 1.3*vectors { // halves of 3003 states
+		t.Errorf("10 on 10 needs %g bytes, three vectors alone %g", need, vectors)
+	}
+	if _, err := Fit(10, 10, Options{MemoryBytes: uint64(need) + 1, Vectors: 3}); err != nil {
 		t.Errorf("with one byte to spare: %v", err)
 	}
 	var large *TooLargeError
-	if _, err := Fit(10, 10, Options{MemoryBytes: need - 1, Vectors: 3}); !errors.As(err, &large) {
+	if _, err := Fit(10, 10, Options{MemoryBytes: uint64(need) - 1, Vectors: 3}); !errors.As(err, &large) {
 		t.Fatalf("with one byte too few: %v, want a *TooLargeError", err)
 	}
-	if math.Abs(large.BytesWanted-need) > 1e-6*need || large.BytesAvailable != need-1 || large.LargestSites != 9 ||
+	if large.BytesWanted != need || large.BytesAvailable != uint64(need)-1 || large.LargestSites != 9 ||
 		large.Dimension != "92378" || large.Sites != 10 || large.Atoms != 10 {
-		t.Errorf("got %+v, want %d bytes for 92378 states and 9 sites", *large, need)
+		t.Errorf("got %+v, want %g bytes for 92378 states and 9 sites", *large, need)
 	}
 }
 
@@ -37,16 +40,16 @@ func TestFitRefusesTheImpossible(t *testing.T) {
 		sites, atoms, largest int
 		text                  []string
 	}{
-		// D(14, 14) = 20058300 needs 0.64 GB, D(15, 15) = 77558760 needs 2.5 GB, D(16, 16) = 300540195 needs 9.6 GB.
-		{20, 20, 15, []string{"68923264410 states", "2.21 TB", "8 GB", "15 sites"}},
-		{22, 22, 15, []string{"1052049481860 states", "33.7 TB"}}, // dimension 1e12
-		// D(22, 11) = 129024480 needs 4.1 GB, D(23, 12) = 548354040 needs 17.5 GB.
-		{40, 20, 22, []string{"89.4 PB", "22 sites"}},
-		{100, 100, 15, []string{"4.527e+58 states", "1.45e+60 bytes"}},
-		{2, 1_000_000_000, 1, []string{"1000000001 states", "48 GB"}},
+		// D(16, 16) = 300540195 needs 7.2 GB for three vectors, D(17, 17) = 1166803110 28 GB.
+		{20, 20, 16, []string{"68923264410 states", "1.67 TB", "8 GB", "16 sites"}},
+		{22, 22, 16, []string{"1052049481860 states", "25.3 TB"}}, // dimension 1e12
+		// D(22, 11) = 129024480 needs 3.1 GB, D(23, 12) = 548354040 needs 13.2 GB.
+		{40, 20, 22, []string{"67.1 PB", "22 sites"}},
+		{100, 100, 16, []string{"4.527e+58 states", "1.09e+60 bytes"}},
+		{2, 1_000_000_000, 1, []string{"1000000001 states", "124 GB"}},
 		{12, 1_000_000_000, 1, []string{"e+91 states"}},
 		{1_000_000, 1_000_000_000, 3, []string{"e+", "over 1e+300 bytes"}},
-		{math.MaxInt, math.MaxInt, 15, []string{"10^(5.553e+18) states", "over 1e+300 bytes"}},
+		{math.MaxInt, math.MaxInt, 16, []string{"10^(5.553e+18) states", "over 1e+300 bytes"}},
 		{math.MaxInt, 3, -1, []string{"states"}},
 	} {
 		start := time.Now()

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strings"
 	"testing"
 
@@ -13,74 +14,23 @@ import (
 	"hilltop/bosehubbard/lattice"
 )
 
-// axis returns the terms of one axis in the order J, V, F.
-func axis(j, v, f float64) bosehubbard.AxisTerms {
-	return bosehubbard.AxisTerms{Tunnelling: j, Curvature: v, Tilt: f}
-}
-
-func mustOperator(t testing.TB, sites []int, periodic []bool, m bosehubbard.Model, atoms int) *Operator {
-	t.Helper()
-	l, err := lattice.Box(sites, periodic)
-	if err != nil {
-		t.Fatal(err)
-	}
-	h, err := NewOperator(context.Background(), l, m, atoms, Options{})
-	if err != nil {
-		t.Fatal(err)
-	}
-	return h
-}
-
-// system is one box with one model; systems covers every kind of term and shape.
-type system struct {
-	name     string
-	sites    []int
-	periodic []bool
-	model    bosehubbard.Model
-	atoms    int
-}
-
-func systems() []system {
-	x, y, z := axis(1.3, -0.2, 0.4), axis(-0.7, 0.1, -0.3), axis(0.5, 0.9, 0)
-	model := func(u float64, axes ...bosehubbard.AxisTerms) bosehubbard.Model {
-		return bosehubbard.Model{Axes: axes, Interaction: u}
-	}
-	return []system{
-		{"one site", []int{1}, []bool{false}, model(3, x), 4},
-		{"no atoms", []int{4}, []bool{true}, model(3, x), 0},
-		{"one atom", []int{5}, []bool{true}, model(3, x), 1},
-		{"two sites", []int{2}, []bool{true}, model(4, x), 5},
-		{"open chain", []int{5}, []bool{false}, model(-2.1, x), 4},
-		{"ring", []int{5}, []bool{true}, model(4, x), 5},
-		{"rectangle", []int{2, 3}, []bool{false, false}, model(1.7, x, y), 4},
-		{"cylinder", []int{3, 3}, []bool{true, false}, model(-1.7, x, y), 3},
-		{"torus", []int{3, 4}, []bool{true, true}, model(9, x, y), 2},
-		{"cube", []int{2, 2, 2}, []bool{false, false, true}, model(-6, x, y, z), 3},
-		{"frozen axis", []int{3, 2}, []bool{true, false}, model(-6, x, axis(0, 1, 1)), 3},
-	}
-}
-
 // element returns <a|H|b> from the definition: the diagonal, or one atom moved
-// along one bond.
-func element(l *lattice.Lattice, m bosehubbard.Model, a, b []int) float64 {
+// along one hop.
+func element(t *Terms, a, b []int) float64 {
 	sum := 0.0
-	for _, bond := range l.Bonds {
-		for _, way := range [][2]int{{bond.From, bond.To}, {bond.To, bond.From}} {
-			moved := append([]int(nil), b...) // b_to^+ b_from |b>
+	for _, hop := range t.Hops {
+		for _, way := range [][2]int{{hop.From, hop.To}, {hop.To, hop.From}} {
+			moved := slices.Clone(b) // b_to^+ b_from |b>
 			moved[way[0]]--
 			moved[way[1]]++
-			if moved[way[0]] >= 0 && fmt.Sprint(moved) == fmt.Sprint(a) {
-				sum -= m.Axes[bond.Axis].Tunnelling * math.Sqrt(float64(b[way[0]])) * math.Sqrt(float64(moved[way[1]]))
+			if moved[way[0]] >= 0 && slices.Equal(moved, a) {
+				sum += hop.Amplitude * math.Sqrt(float64(b[way[0]])) * math.Sqrt(float64(moved[way[1]]))
 			}
 		}
 	}
-	if fmt.Sprint(a) == fmt.Sprint(b) {
+	if slices.Equal(a, b) {
 		for i, n := range b {
-			sum += m.Interaction / 2 * float64(n*(n-1))
-			for ax, terms := range m.Axes {
-				x := l.Positions[i][ax]
-				sum += float64(n) * (terms.Curvature*x*x + terms.Tilt*x)
-			}
+			sum += t.Interaction/2*float64(n*(n-1)) + t.potential(i)*float64(n)
 		}
 	}
 	return sum
@@ -89,92 +39,161 @@ func element(l *lattice.Lattice, m bosehubbard.Model, a, b []int) float64 {
 // Every matrix element, read off by applying H to unit vectors.
 func TestOperatorElements(t *testing.T) {
 	const tolerance = 1e-14 // a few roundings of the largest term
-	for _, s := range systems() {
-		l, err := lattice.Box(s.sites, s.periodic)
-		if err != nil {
-			t.Fatal(err)
+	for _, s := range systems(t) {
+		h := mustOperator(t, s.terms, s.atoms, Options{})
+		d, w := h.Dimension(), h.NewWorkspace(1)
+		states := everyState(s.terms.Sites, s.atoms)
+		if d != len(states) || h.Len() != d {
+			t.Errorf("%s: dimension %d, length %d, want %d", s.name, d, h.Len(), len(states))
+			continue
 		}
-		h := mustOperator(t, s.sites, s.periodic, s.model, s.atoms)
-		d, w := h.Basis.Dimension, NewWorkspace(h.Basis)
-		states := everyState(l.Sites, s.atoms)
 		column, unit := make([]float64, d), make([]float64, d)
-		for j := range d {
-			unit[j] = 1
+		for _, b := range states {
+			unit[h.Rank(b)] = 1
 			h.ApplyTo(column, unit, w)
-			unit[j] = 0
-			for i := range d {
-				want := element(l, s.model, states[i], states[j])
-				if diff := math.Abs(column[i] - want); diff > tolerance*(1+50*math.Abs(want)) {
-					t.Errorf("%s: <%v|H|%v> = %.17g, want %.17g, difference %.2g", s.name, states[i], states[j], column[i], want, diff)
+			unit[h.Rank(b)] = 0
+			for _, a := range states {
+				got, want := column[h.Rank(a)], element(s.terms, a, b)
+				if diff := math.Abs(got - want); diff > tolerance*(1+50*math.Abs(want)) {
+					t.Errorf("%s: <%v|H|%v> = %.17g, want %.17g, difference %.2g", s.name, a, b, got, want, diff)
 				}
 			}
 		}
 	}
 }
 
-func randomVector(random *rand.Rand, n int) []float64 {
-	x := make([]float64, n)
-	for i := range x {
-		x[i] = random.NormFloat64()
-	}
-	return x
-}
-
-func dot(x, y []float64) float64 {
-	sum := 0.0
-	for i := range x {
-		sum += x[i] * y[i]
-	}
-	return sum
-}
-
-// <x, H y> = <H x, y> for random vectors, to the rounding of sums of D terms.
-func TestOperatorIsHermitian(t *testing.T) {
-	random := rand.New(rand.NewPCG(11, 0))
-	for _, s := range systems() {
-		h := mustOperator(t, s.sites, s.periodic, s.model, s.atoms)
-		d, w := h.Basis.Dimension, NewWorkspace(h.Basis)
-		x, y := randomVector(random, d), randomVector(random, d)
-		hx, hy := make([]float64, d), make([]float64, d)
-		h.ApplyTo(hx, x, w)
-		h.ApplyTo(hy, y, w)
-		left, right := dot(x, hy), dot(hx, y)
-		tolerance := 1e-14 * math.Sqrt(dot(hx, hx)*dot(y, y))
-		if diff := math.Abs(left - right); !(diff <= tolerance) {
-			t.Errorf("%s: <x,Hy> = %.17g, <Hx,y> = %.17g, difference %.2g > %.2g", s.name, left, right, diff, tolerance)
+// close reports vectors that differ by more than roundings of their size.
+func checkClose(t *testing.T, name string, got, want []float64) {
+	t.Helper()
+	size := math.Sqrt(dot(want, want))
+	for i := range want {
+		if diff := math.Abs(got[i] - want[i]); !(diff <= 1e-13*(1+size)) {
+			t.Errorf("%s: component %d = %.17g, want %.17g, difference %.2g", name, i, got[i], want[i], diff)
+			return
 		}
 	}
 }
 
-// Rows in any split give the same bits, and nothing outside them is touched.
-func TestApplyRowsInParts(t *testing.T) {
-	random := rand.New(rand.NewPCG(12, 0))
-	h := mustOperator(t, []int{3, 2}, []bool{true, false}, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, 0.1, 0), axis(2, 0, 0.3)}, Interaction: -3}, 5)
-	d, w := h.Basis.Dimension, NewWorkspace(h.Basis)
-	x, whole := randomVector(random, d), make([]float64, d)
-	h.ApplyTo(whole, x, w)
-	for range 50 {
-		from := random.IntN(d)
-		to := from + random.IntN(d-from+1)
-		part := make([]float64, d)
-		for i := range part {
-			part[i] = math.NaN()
+// The fast operator against the plain one, on random vectors of larger systems.
+func TestOperatorAgainstPlain(t *testing.T) {
+	random := rand.New(rand.NewPCG(13, 0))
+	list := systems(t)
+	chain := bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, -0.05, 0.1)}, Interaction: -2.1}
+	plane := bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, -0.05, 0), axis(0.6, 0.1, 0)}, Interaction: 3}
+	list = append(list,
+		system{"nine on nine", boxTerms(t, []int{9}, []bool{false}, chain), 9},
+		system{"eight on a ring", boxTerms(t, []int{8}, []bool{true}, chain), 8},
+		system{"torus of nine", boxTerms(t, []int{3, 3}, []bool{true, true}, plane), 7},
+		system{"ladder", boxTerms(t, []int{5, 2}, []bool{false, false}, plane), 6},
+		system{"two sites, many atoms", boxTerms(t, []int{2}, []bool{false}, chain), 20_000},
+		system{"three sites, many atoms", boxTerms(t, []int{3}, []bool{false}, chain), 100},
+		system{"many sites, few atoms", boxTerms(t, []int{40}, []bool{true}, chain), 3},
+	)
+	for _, s := range list {
+		h, plain := mustOperator(t, s.terms, s.atoms, Options{}), newPlainOperator(s.terms, s.atoms)
+		x := randomVector(random, h.Len())
+		got, want := make([]float64, h.Len()), make([]float64, h.Len())
+		h.ApplyTo(got, x, h.NewWorkspace(2))
+		plain.ApplyTo(want, plainVector(h, plain.plainBasis, x))
+		checkClose(t, s.name, plainVector(h, plain.plainBasis, got), want)
+	}
+}
+
+// Both sectors of the mirror: H on the sector is H on the space, norms agree, and
+// the dimensions add up.
+func TestParitySectors(t *testing.T) {
+	mirrored := 0
+	for _, s := range systems(t) {
+		if _, ok := s.terms.Mirror(); !ok {
+			if _, err := NewOperatorOf(context.Background(), s.terms, s.atoms, Options{Parity: 1}); err == nil || !strings.Contains(err.Error(), "without a mirror") {
+				t.Errorf("%s: parity without a mirror: %v", s.name, err)
+			}
+			continue
 		}
-		h.ApplyRowsTo(part, x, from, to, w)
-		for i := range part {
-			if inside := i >= from && i < to; inside && part[i] != whole[i] || !inside && !math.IsNaN(part[i]) {
-				t.Fatalf("rows %d to %d: dst[%d] = %g, all rows give %g", from, to, i, part[i], whole[i])
+		mirrored++
+		plain := newPlainOperator(s.terms, s.atoms)
+		total := 0
+		for _, parity := range []int{1, -1} {
+			h := mustOperator(t, s.terms, s.atoms, Options{Parity: parity})
+			total += h.Dimension()
+			name := fmt.Sprintf("%s, parity %+d", s.name, parity)
+			x, y := make([]float64, h.Len()), make([]float64, h.Len())
+			h.RandomTo(x, 1, 2)
+			h.ApplyTo(y, x, h.NewWorkspace(1))
+			full, want := plainVector(h, plain.plainBasis, x), make([]float64, plain.Dimension)
+			if a, b := dot(x, x), dot(full, full); math.Abs(a-b) > 1e-13*b {
+				t.Errorf("%s: |x|^2 = %.17g in the sector, %.17g in the space", name, a, b)
+			}
+			plain.ApplyTo(want, full)
+			checkClose(t, name, plainVector(h, plain.plainBasis, y), want)
+		}
+		if total != plain.Dimension {
+			t.Errorf("%s: sectors of %d states in all, want %d", s.name, total, plain.Dimension)
+		}
+	}
+	if mirrored < 15 {
+		t.Errorf("%d systems with a mirror, want at least 15", mirrored)
+	}
+}
+
+// A limit of the occupation leaves the elements between the states it allows.
+func TestMaxOccupation(t *testing.T) {
+	for _, s := range systems(t) {
+		for most := (s.atoms + s.terms.Sites - 1) / s.terms.Sites; most <= s.atoms; most++ {
+			if most == 0 {
+				continue
+			}
+			var allowed [][]int
+			for _, state := range everyState(s.terms.Sites, s.atoms) {
+				if slices.Max(state) <= most {
+					allowed = append(allowed, state)
+				}
+			}
+			h := mustOperator(t, s.terms, s.atoms, Options{MaxOccupation: most})
+			if h.Dimension() != len(allowed) {
+				t.Errorf("%s, at most %d: dimension %d, want %d", s.name, most, h.Dimension(), len(allowed))
+				continue
+			}
+			random := rand.New(rand.NewPCG(14, 0))
+			x, y, want := randomVector(random, h.Len()), make([]float64, h.Len()), make([]float64, h.Len())
+			h.ApplyTo(y, x, h.NewWorkspace(1))
+			for _, a := range allowed {
+				for _, b := range allowed {
+					want[h.Rank(a)] += element(s.terms, a, b) * x[h.Rank(b)]
+				}
+			}
+			checkClose(t, fmt.Sprintf("%s, at most %d atoms", s.name, most), y, want)
+			if _, ok := s.terms.Mirror(); ok {
+				plus := mustOperator(t, s.terms, s.atoms, Options{MaxOccupation: most, Parity: 1})
+				minus := mustOperator(t, s.terms, s.atoms, Options{MaxOccupation: most, Parity: -1})
+				if n := plus.Dimension() + minus.Dimension(); n != len(allowed) {
+					t.Errorf("%s, at most %d: sectors of %d states, want %d", s.name, most, n, len(allowed))
+				}
 			}
 		}
 	}
 }
 
-func TestApplyAllocatesNothing(t *testing.T) {
-	h := mustOperator(t, []int{6}, []bool{true}, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, 0.1, 0)}, Interaction: 4}, 6)
-	w := NewWorkspace(h.Basis)
-	x, y := make([]float64, 462), make([]float64, 462)
-	if n := testing.AllocsPerRun(20, func() { h.ApplyTo(y, x, w) }); n != 0 {
-		t.Errorf("ApplyTo allocates %g times, want 0", n)
+// <x, H y> = <H x, y> for random vectors, to the rounding of sums of D terms.
+func TestOperatorIsHermitian(t *testing.T) {
+	for _, s := range systems(t) {
+		for _, parity := range []int{0, 1, -1} {
+			if _, ok := s.terms.Mirror(); parity != 0 && !ok {
+				continue
+			}
+			h := mustOperator(t, s.terms, s.atoms, Options{Parity: parity})
+			d, w := h.Len(), h.NewWorkspace(1)
+			x, y, hx, hy := make([]float64, d), make([]float64, d), make([]float64, d), make([]float64, d)
+			h.RandomTo(x, 1, 0)
+			h.RandomTo(y, 2, 0)
+			h.ApplyTo(hx, x, w)
+			h.ApplyTo(hy, y, w)
+			left, right := dot(x, hy), dot(hx, y)
+			tolerance := 1e-14 * (1 + math.Sqrt(dot(hx, hx)*dot(y, y)))
+			if diff := math.Abs(left - right); !(diff <= tolerance) {
+				t.Errorf("%s, parity %d: <x,Hy> = %.17g, <Hx,y> = %.17g, difference %.2g > %.2g", s.name, parity, left, right, diff, tolerance)
+			}
+		}
 	}
 }
 
@@ -195,20 +214,16 @@ func TestOperatorMoments(t *testing.T) {
 		{8, 5, 2, 40.0 / 9, 130.0 / 9},  // 4.444444444, 14.444444444
 	} {
 		ring := func(j, u float64) *Operator {
-			return mustOperator(t, []int{tc.sites}, []bool{true}, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(j, 0, 0)}, Interaction: u}, tc.atoms)
+			m := bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(j, 0, 0)}, Interaction: u}
+			return mustOperator(t, boxTerms(t, []int{tc.sites}, []bool{true}, m), tc.atoms, Options{})
 		}
-		sum := 0.0
-		h := ring(1, tc.u)
-		for _, e := range h.Diagonal() {
-			sum += e
-		}
-		d := h.Basis.Dimension
-		if got := sum / float64(d); math.Abs(got-tc.wantH) > 1e-13*tc.wantH {
+		if got := ring(1, tc.u).TraceMean(); math.Abs(got-tc.wantH) > 1e-13*tc.wantH {
 			t.Errorf("ring L=%d N=%d U=%g: Tr H/D = %.15g, want %.15g", tc.sites, tc.atoms, tc.u, got, tc.wantH)
 		}
 		k := ring(1, 0)
-		w, unit, column := NewWorkspace(k.Basis), make([]float64, d), make([]float64, d)
-		sum = 0
+		d := k.Dimension()
+		w, unit, column := k.NewWorkspace(1), make([]float64, d), make([]float64, d)
+		sum := 0.0
 		for i := range d {
 			unit[i] = 1
 			k.ApplyTo(column, unit, w)
@@ -217,6 +232,30 @@ func TestOperatorMoments(t *testing.T) {
 		}
 		if got := sum / float64(d); math.Abs(got-tc.wantK2) > 1e-13*tc.wantK2 {
 			t.Errorf("ring L=%d N=%d: Tr Hkin^2/D = %.15g, want %.15g", tc.sites, tc.atoms, got, tc.wantK2)
+		}
+	}
+}
+
+// Tr H of both sectors, against the sum over an orthonormal basis of each.
+func TestTraceMean(t *testing.T) {
+	for _, s := range systems(t) {
+		for _, parity := range []int{0, 1, -1} {
+			if _, ok := s.terms.Mirror(); parity != 0 && !ok {
+				continue
+			}
+			h := mustOperator(t, s.terms, s.atoms, Options{Parity: parity})
+			x, y, w, sum := make([]float64, h.Len()), make([]float64, h.Len()), h.NewWorkspace(1), 0.0
+			for i := range x { // Tr P H, P the projector on the sector
+				clear(x)
+				x[i] = 1
+				h.Project(x)
+				h.ApplyTo(y, x, w)
+				sum += dot(x, y)
+			}
+			want := sum / max(1, float64(h.Dimension()))
+			if got := h.TraceMean(); math.Abs(got-want) > 1e-12*(1+math.Abs(want)) {
+				t.Errorf("%s, parity %d: Tr H/D = %.15g, want %.15g", s.name, parity, got, want)
+			}
 		}
 	}
 }
@@ -233,66 +272,42 @@ func TestNewOperatorRefuses(t *testing.T) {
 	for _, tc := range []struct {
 		model bosehubbard.Model
 		atoms int
+		opt   Options
 		want  string
 	}{
-		{bosehubbard.Model{}, 3, "model of 0 axes on a lattice of 1"},
-		{one(1, axis(1, 0, 0)), -1, "-1 atoms"},
-		{one(nan, axis(1, 0, 0)), 3, "interaction NaN"},
-		{one(inf, axis(1, 0, 0)), 3, "interaction +Inf"},
-		{one(1, axis(nan, 0, 0)), 3, "finite"},
-		{one(1, axis(-inf, 0, 0)), 3, "finite"},
-		{one(1, axis(1, nan, 0)), 3, "potential NaN"},
-		{one(1, axis(1, 0, inf)), 3, "finite"},
-		{one(1e308, axis(1, 0, 0)), 3, "finite"},
-		{one(1, axis(1e308, 0, 0)), 3, "finite"},
-		{one(1, axis(1, 0, 0)), 1_000_000_000, "states"},
+		{bosehubbard.Model{}, 3, Options{}, "model of 0 axes on a lattice of 1"},
+		{one(1, axis(1, 0, 0)), -1, Options{}, "-1 atoms"},
+		{one(nan, axis(1, 0, 0)), 3, Options{}, "interaction NaN"},
+		{one(inf, axis(1, 0, 0)), 3, Options{}, "interaction +Inf"},
+		{one(1, axis(nan, 0, 0)), 3, Options{}, "finite"},
+		{one(1, axis(-inf, 0, 0)), 3, Options{}, "finite"},
+		{one(1, axis(1, nan, 0)), 3, Options{}, "potential NaN"},
+		{one(1, axis(1, 0, inf)), 3, Options{}, "finite"},
+		{one(1e308, axis(1, 0, 0)), 3, Options{}, "finite"},
+		{one(1, axis(1e308, 0, 0)), 3, Options{}, "finite"},
+		{one(1, axis(1, 0, 0)), 1_000_000_000, Options{MemoryBytes: 1e9}, "states"},
+		{one(1, axis(1, 0, 0)), 3, Options{Vectors: -1}, "-1 vectors"},
+		{one(1, axis(1, 0, 0)), 3, Options{Parity: 2}, "parity 2"},
+		{one(1, axis(1, 0, 1)), 3, Options{Parity: -1}, "without a mirror"},
+		{one(1, axis(1, 0, 0)), 3, Options{MaxOccupation: -1}, "at most -1 atoms"},
+		{one(1, axis(1, 0, 0)), 13, Options{MaxOccupation: 2}, "no room for 13"},
 	} {
-		h, err := NewOperator(context.Background(), l, tc.model, tc.atoms, Options{MemoryBytes: 1e9})
+		h, err := NewOperator(context.Background(), l, tc.model, tc.atoms, tc.opt)
 		if err == nil || h != nil || !strings.Contains(err.Error(), tc.want) {
-			t.Errorf("NewOperator(%+v, %d atoms) = %v, want an error with %q", tc.model, tc.atoms, err, tc.want)
+			t.Errorf("NewOperator(%+v, %d atoms, %+v) = %v, want an error with %q", tc.model, tc.atoms, tc.opt, err, tc.want)
+		}
+	}
+	for _, terms := range []*Terms{
+		{Sites: 0}, {Sites: 3, Potential: []float64{1}}, {Sites: 3, Hops: []Hop{{0, 3, 1}}},
+		{Sites: 3, Hops: []Hop{{1, 1, 1}}}, {Sites: 3, Hops: []Hop{{-1, 1, 1}}},
+	} {
+		if h, err := NewOperatorOf(context.Background(), terms, 2, Options{}); err == nil || h != nil {
+			t.Errorf("terms %+v: no error", *terms)
 		}
 	}
 	stopped, cancel := context.WithCancel(context.Background())
 	cancel()
 	if _, err := NewOperator(stopped, l, one(1, axis(1, 0, 0)), 6, Options{}); !errors.Is(err, context.Canceled) {
 		t.Errorf("NewOperator with a stopped context: %v, want context.Canceled", err)
-	}
-}
-
-func TestApplyPanicsOnMisuse(t *testing.T) {
-	h := mustOperator(t, []int{3}, []bool{true}, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, 0, 0)}}, 2)
-	w, other := NewWorkspace(h.Basis), NewWorkspace(mustBasis(t, 3, 2))
-	six, five := make([]float64, 6), make([]float64, 5)
-	for name, misuse := range map[string]func(){
-		"short dst":       func() { h.ApplyTo(five, six, w) },
-		"short x":         func() { h.ApplyTo(six, five, w) },
-		"row 7":           func() { h.ApplyRowsTo(six, six, 0, 7, w) },
-		"backwards":       func() { h.ApplyRowsTo(six, six, 3, 2, w) },
-		"other workspace": func() { h.ApplyTo(six, six, other) },
-	} {
-		func() {
-			defer func() {
-				if recover() == nil {
-					t.Errorf("%s: no panic", name)
-				}
-			}()
-			misuse()
-		}()
-	}
-}
-
-func BenchmarkApply(b *testing.B) {
-	for _, size := range []int{8, 10, 12} {
-		for _, ring := range []bool{false, true} {
-			b.Run(fmt.Sprintf("sites=%d/atoms=%d/ring=%v", size, size, ring), func(b *testing.B) {
-				h := mustOperator(b, []int{size}, []bool{ring}, bosehubbard.Model{Axes: []bosehubbard.AxisTerms{axis(1, -0.05, 0)}, Interaction: -2.1}, size)
-				w := NewWorkspace(h.Basis)
-				x, y := make([]float64, h.Basis.Dimension), make([]float64, h.Basis.Dimension)
-				b.ReportAllocs()
-				for b.Loop() {
-					h.ApplyTo(y, x, w)
-				}
-			})
-		}
 	}
 }

@@ -52,6 +52,8 @@ func spectra() map[string][]float64 {
 		"large offset":           spaced(50, 1e6, 1e6+1),
 		"tiny":                   floatsScaled(1e-200, spaced(100, -3, 11)),
 		"huge":                   floatsScaled(1e200, spaced(100, -3, 11)),
+		"largest":                {1e300, -1e300, 1},
+		"smallest":               {1e-300, 2e-300, 5e-300},
 		"hundred, far and close": slices.Concat(spaced(98, 0, 1), []float64{1.0001, 50}),
 	}
 }
@@ -216,5 +218,54 @@ func TestExtremesAreDeterministic(t *testing.T) {
 	}
 	if math.Abs(first.Lowest+1.2) > 1e-13 || math.Abs(other.Highest-1.3) > 1e-13 {
 		t.Errorf("ends %.16g and %.16g, want -1.2 and 1.3", first.Lowest, other.Highest)
+	}
+}
+
+// One end alone takes fewer steps where the other converges more slowly.
+func TestOneEnd(t *testing.T) {
+	values := slices.Concat(spaced(2000, -1, 1), []float64{5})
+	both, err := Extremes(context.Background(), len(values), diagonal(values), Options{Vectors: true})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, ends := range []Ends{OnlyLowest, OnlyHighest} {
+		got, err := Extremes(context.Background(), len(values), diagonal(values), Options{Ends: ends, Vectors: true})
+		if err != nil {
+			t.Errorf("ends %d: %v", ends, err)
+		}
+		if ends == OnlyHighest {
+			if got.Iterations >= both.Iterations/2 || math.Abs(got.Highest-5) > 1e-9 || got.LowestVector != nil || len(got.HighestVector) != len(values) {
+				t.Errorf("highest alone: %.15g after %d steps, both took %d", got.Highest, got.Iterations, both.Iterations)
+			}
+			checkVector(t, "highest alone", got.HighestVector, values, got.Highest, got.HighestResidual, 1e-12)
+		} else if math.Abs(got.Lowest+1) > 1e-9 || got.HighestVector != nil {
+			t.Errorf("lowest alone: %.15g", got.Lowest)
+		}
+	}
+}
+
+// Vectors to work in that are handed over are used and change nothing, nor does
+// the number of workers.
+func TestScratchAndWorkers(t *testing.T) {
+	values := spaced(100_000, -1, 1)
+	values[17], values[40_000] = -1.2, 1.3
+	n := len(values)
+	want, err := Extremes(context.Background(), n, diagonal(values), Options{Vectors: true, Workers: 1})
+	if err != nil {
+		t.Fatal(err)
+	}
+	dirty := func() []float64 {
+		x := make([]float64, n)
+		for i := range x {
+			x[i] = math.NaN()
+		}
+		return x
+	}
+	for _, workers := range []int{1, 2, 3, 8} {
+		got, err := Extremes(context.Background(), n, diagonal(values), Options{Vectors: true, Workers: workers, Scratch: [2][]float64{dirty(), dirty()}})
+		if err != nil || got.Lowest != want.Lowest || got.HighestResidual != want.HighestResidual ||
+			!slices.Equal(got.LowestVector, want.LowestVector) || !slices.Equal(got.HighestVector, want.HighestVector) {
+			t.Errorf("%d workers: %v, %.17g to %.17g, want %.17g to %.17g in all bits", workers, err, got.Lowest, got.Highest, want.Lowest, want.Highest)
+		}
 	}
 }

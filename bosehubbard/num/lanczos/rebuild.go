@@ -12,8 +12,8 @@ func (s *search) rebuild() error {
 	for stream := range uint64(2) {
 		steps := 0
 		for i := range s.ends {
-			if s.ends[i].stream == stream {
-				s.ends[i].vector = make([]float64, len(s.v))
+			if s.wanted(i) && s.ends[i].stream == stream {
+				s.ends[i].vector = make([]float64, len(s.u))
 				steps = max(steps, len(s.ends[i].weights))
 			}
 		}
@@ -25,8 +25,10 @@ func (s *search) rebuild() error {
 		}
 	}
 	for i := range s.ends {
-		if err := s.measure(&s.ends[i]); err != nil {
-			return err
+		if s.wanted(i) {
+			if err := s.measure(&s.ends[i]); err != nil {
+				return err
+			}
 		}
 	}
 	s.progress(200)
@@ -46,11 +48,12 @@ func (s *search) repeat(stream uint64, steps int) error {
 		}
 		for i := range s.ends {
 			e := &s.ends[i]
-			if e.stream != stream || j >= len(e.weights) {
+			if e.vector == nil || e.stream != stream || j >= len(e.weights) {
 				continue
 			}
-			err := s.blocks(func(lo, hi int) {
-				floats.AddScaled(e.vector[lo:hi], e.weights[j], s.v[lo:hi])
+			_, err := s.sum(func(lo, hi int) float64 {
+				floats.AddScaled(e.vector[lo:hi], e.weights[j]/s.norm, s.u[lo:hi])
+				return 0
 			})
 			if err != nil {
 				return err
@@ -63,20 +66,21 @@ func (s *search) repeat(stream uint64, steps int) error {
 
 // measure normalises the vector x of an end and sets its residual |A x - value x|.
 func (s *search) measure(e *end) error {
-	norm := 0.0
-	err := s.blocks(func(lo, hi int) { norm = math.Hypot(norm, floats.Norm(e.vector[lo:hi], 2)) })
+	square, err := s.sum(func(lo, hi int) float64 { return floats.Dot(e.vector[lo:hi], e.vector[lo:hi]) })
 	if err != nil {
 		return err
 	}
-	if err := s.blocks(func(lo, hi int) { divide(e.vector[lo:hi], norm) }); err != nil {
+	norm := math.Sqrt(square)
+	if _, err := s.sum(func(lo, hi int) float64 { floats.Scale(1/norm, e.vector[lo:hi]); return 0 }); err != nil {
 		return err
 	}
-	if err := s.product(s.w, e.vector); err != nil {
+	if _, err := s.matrix.Combine(s.ctx, s.u, e.vector, s.scale, 0); err != nil {
 		return err
 	}
-	e.residual = 0
-	return s.blocks(func(lo, hi int) {
-		floats.AddScaled(s.w[lo:hi], -e.value, e.vector[lo:hi])
-		e.residual = math.Hypot(e.residual, floats.Norm(s.w[lo:hi], 2))
+	square, err = s.sum(func(lo, hi int) float64 {
+		floats.AddScaled(s.u[lo:hi], -e.value*s.scale, e.vector[lo:hi])
+		return floats.Dot(s.u[lo:hi], s.u[lo:hi])
 	})
+	e.residual = math.Sqrt(square) / s.scale
+	return err
 }

@@ -51,7 +51,7 @@ func (s *search) run() error {
 			s.ends[0].merge(found[0], s.opt.Tolerance*s.size)
 			s.ends[1].merge(found[1], s.opt.Tolerance*s.size)
 		}
-		if !isClosed || len(s.v) == 1 {
+		if !isClosed || len(s.u) == 1 {
 			break
 		}
 	}
@@ -75,10 +75,15 @@ func (s *search) once(stream uint64) (ends [2]end, isClosed bool, err error) {
 		if m < 16 || m%4 == 0 || isLast {
 			s.check(&ends)
 		}
-		if isLast || ends[0].converged && ends[1].converged {
+		if isLast || (ends[0].converged || !s.wanted(0)) && (ends[1].converged || !s.wanted(1)) {
 			return ends, isClosed, nil
 		}
 	}
+}
+
+// wanted says whether end i, 0 the lowest and 1 the highest, is looked for.
+func (s *search) wanted(i int) bool {
+	return s.opt.Ends == Both || s.opt.Ends == [2]Ends{OnlyLowest, OnlyHighest}[i]
 }
 
 // check finds the ends of T and their residuals, beta |last component|.
@@ -141,7 +146,7 @@ func (e *end) merge(other end, slack float64) {
 func (s *search) report(ends *[2]end) {
 	residual := 0.0
 	for i := range ends {
-		if !ends[i].converged {
+		if s.wanted(i) && !ends[i].converged {
 			residual = max(residual, ends[i].residual)
 		}
 	}

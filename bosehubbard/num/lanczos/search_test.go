@@ -23,7 +23,7 @@ func TestDeficientStart(t *testing.T) {
 		"both ends":             {0, 201},
 	} {
 		opt := Options{Tolerance: 1e-10, MaxIterations: 500, Seed: 1, Vectors: true}
-		r := newRecurrence(context.Background(), len(values), diagonal(values))
+		r := newRecurrence(context.Background(), &product{apply: diagonal(values), scratch: make([]float64, len(values))}, 1, [2][]float64{})
 		s := newSearch(r, opt)
 		s.begin = func(seed, stream uint64) error {
 			if stream > 0 {

@@ -89,3 +89,9 @@ func inverseIteration(p, d, b []float64) {
 		divide(p, floats.Norm(p, 2))
 	}
 }
+
+func divide(x []float64, by float64) {
+	for i := range x {
+		x[i] /= by
+	}
+}

@@ -1,0 +1,147 @@
+package fock
+
+import (
+	"context"
+	"slices"
+)
+
+// sector is the part of the Hamiltonian inside one half of the sites, for a fixed
+// number of atoms there: the energies of its states and the hops between them.
+//
+// The hops of a state stand together, those of states with equally many hops one
+// after the other, so that a loop over all of them has few surprises for the
+// processor.
+type sector struct {
+	count    int
+	energy   []float64 // of each state without its hops, Hz
+	span     []span    // where the hops of each state stand
+	order    []int32   // the states by their number of hops
+	classEnd []int32   // order[:classEnd[k]] have at most k hops
+	from     []int32   // states that the hops come from
+	element  []float64 // matrix elements, Hz
+}
+
+// span is a stretch of from and element.
+type span struct{ begin, length int32 }
+
+// part is one half: its basis and the terms inside it, by place in its own order.
+type part struct {
+	*space
+	bonds       []bond // between places of the part
+	potential   []float64
+	interaction float64
+}
+
+// newPart collects the terms among the given sites.
+func newPart(t *Terms, sites []int, atoms, most int) *part {
+	p := &part{space: newSpace(len(sites), atoms, most), interaction: t.Interaction}
+	place := make(map[int]int, len(sites))
+	for k, i := range sites {
+		place[i] = k
+		p.potential = append(p.potential, t.potential(i))
+	}
+	for _, b := range t.bonds() {
+		low, here := place[b.low]
+		if high, ok := place[b.high]; here && ok {
+			p.bonds = append(p.bonds, bond{low, high, b.amplitude})
+		}
+	}
+	return p
+}
+
+// numberOfHops counts the hops of all states of t atoms: each hop of the part
+// leads both ways from every state with an atom to give and room to take it.
+func (p *part) numberOfHops(t int) int {
+	if t < 1 || len(p.bonds) == 0 {
+		return 0
+	}
+	if p.most >= t {
+		return 2 * len(p.bonds) * p.ways[p.sites][t-1]
+	}
+	pairs := 0 // states of the two sites of a hop, with the others free
+	for low := 1; low <= min(t, p.most); low++ {
+		for high := 0; high < p.most && low+high <= t; high++ {
+			pairs += p.ways[p.sites-2][t-low-high]
+		}
+	}
+	return 2 * len(p.bonds) * pairs
+}
+
+// build computes the sector of t atoms, looking at ctx between stretches of
+// states.
+func (p *part) build(ctx context.Context, t int) (*sector, error) {
+	s := &sector{count: p.count(t)}
+	s.energy, s.span, s.order = make([]float64, s.count), make([]span, s.count), make([]int32, s.count)
+	hops := p.numberOfHops(t)
+	s.from, s.element = make([]int32, 0, hops), make([]float64, 0, hops)
+	if err := p.sort(ctx, s, t); err != nil {
+		return nil, err
+	}
+	state := make([]int, p.sites)
+	for k, i := range s.order {
+		if k%stretch == 0 && ctx.Err() != nil {
+			return nil, ctx.Err()
+		}
+		p.state(state, t, int(i))
+		s.energy[i] = p.energyOf(state)
+		begin := len(s.from)
+		p.appendHops(s, state, int(i))
+		s.span[i] = span{int32(begin), int32(len(s.from) - begin)}
+	}
+	return s, nil
+}
+
+// stretch is the number of states handled between two looks at a context.
+const stretch = 1 << 12
+
+// sort orders the states by their number of hops, keeping the order of equals.
+func (p *part) sort(ctx context.Context, s *sector, t int) error {
+	state := make([]int, p.sites)
+	p.first(state, t)
+	hops := make([]int32, s.count)
+	for i := range hops {
+		if i%stretch == 0 && ctx.Err() != nil {
+			return ctx.Err()
+		}
+		for _, h := range p.bonds {
+			hops[i] += p.way(state[h.low], state[h.high]) + p.way(state[h.high], state[h.low])
+		}
+		p.next(state)
+	}
+	if s.count == 0 {
+		return nil
+	}
+	s.classEnd = make([]int32, slices.Max(hops)+1)
+	for _, k := range hops {
+		s.classEnd[k]++
+	}
+	begin := int32(0)
+	for k, n := range s.classEnd {
+		s.classEnd[k] = begin
+		begin += n
+	}
+	for i, k := range hops {
+		s.order[s.classEnd[k]] = int32(i)
+		s.classEnd[k]++
+	}
+	return nil
+}
+
+// way is 1 if an atom can go from a site with `from` atoms to one with `to`.
+func (p *part) way(from, to int) int32 {
+	if from > 0 && to < p.most {
+		return 1
+	}
+	return 0
+}
+
+// energyOf returns the energy of a state without hops.
+func (p *part) energyOf(state []int) float64 {
+	sum := 0.0
+	for i, n := range state {
+		if n > 0 {
+			sum += float64(n) * (p.interaction/2*float64(n-1) + p.potential[i])
+		}
+	}
+	return sum
+}
