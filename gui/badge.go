@@ -54,26 +54,10 @@ func (b *Badge) AccessibilityRole() fyne.AccessibleRole { return fyne.Accessible
 // CreateRenderer implements [fyne.Widget].
 func (b *Badge) CreateRenderer() fyne.WidgetRenderer {
 	b.ExtendBaseWidget(b)
-	return &badgeRenderer{badge: b}
+	return newPainting(b)
 }
 
-type badgeRenderer struct {
-	badge *Badge
-	parts []fyne.CanvasObject
-}
-
-var _ fyne.WidgetRenderer = (*badgeRenderer)(nil)
-
-func (r *badgeRenderer) Destroy() {}
-
-func (r *badgeRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-func (r *badgeRenderer) MinSize() fyne.Size { return fyne.NewSquareSize(px(r.badge.Side)) }
-
-func (r *badgeRenderer) Refresh() {
-	r.Layout(r.badge.Size())
-	canvas.Refresh(r.badge)
-}
+func (b *Badge) least() fyne.Size { return fyne.NewSquareSize(px(b.Side)) }
 
 // The shape is drawn on a square of 48 units, the bar 20 wide in its middle.
 const (
@@ -89,14 +73,14 @@ const (
 	lidTurn    = 8 // how far its ends turn inward
 )
 
-func (r *badgeRenderer) Layout(size fyne.Size) {
-	r.parts = nil
-	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, units: badgeUnits, flip: r.badge.Floor, stale: r.badge.Stale, stroke: lineNormal,
-		add: func(o fyne.CanvasObject) { r.parts = append(r.parts, o) }}
+func (b *Badge) paint(size fyne.Size) []fyne.CanvasObject {
+	var parts []fyne.CanvasObject
+	pen := pen{unit: min(size.Width, size.Height) / badgeUnits, units: badgeUnits, flip: b.Floor, stale: b.Stale, stroke: lineNormal,
+		add: func(o fyne.CanvasObject) { parts = append(parts, o) }}
 	if pen.unit < 2./3 {
 		pen.stroke = lineThin // an outline must not fill the bar of a small mark
 	}
-	switch r.badge.Verdict {
+	switch b.Verdict {
 	case sealed:
 		pen.bar(barTop, barBottom, ColorBlue)
 		pen.lid(lidLeft, lidRight)
@@ -113,6 +97,7 @@ func (r *badgeRenderer) Layout(size fyne.Size) {
 	default:
 		pen.dashes(lidTop, barBottom)
 	}
+	return parts
 }
 
 // pen adds shapes in units from the top of a square, turned over where flip is

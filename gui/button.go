@@ -2,20 +2,16 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
-	"fyne.io/fyne/v2/widget"
 )
 
 // Button is pressed by a click, Space or Enter. Its text wraps to two lines.
 type Button struct {
-	widget.BaseWidget
+	control
 
 	OnTapped func()
-	OnKey    func(*fyne.KeyEvent) // keys that are not the button's; may be nil
 
 	text     *Prose
-	focused  bool
 	pointed  bool
 	disabled bool
 }
@@ -59,25 +55,8 @@ func (b *Button) TypedKey(e *fyne.KeyEvent) {
 	case fyne.KeySpace, fyne.KeyReturn, fyne.KeyEnter:
 		b.Tapped(nil)
 	default:
-		if b.OnKey != nil {
-			b.OnKey(e)
-		}
+		b.unused(e)
 	}
-}
-
-// TypedRune does nothing.
-func (b *Button) TypedRune(rune) {}
-
-// FocusGained shows the focus.
-func (b *Button) FocusGained() {
-	b.focused = true
-	b.Refresh()
-}
-
-// FocusLost hides the focus.
-func (b *Button) FocusLost() {
-	b.focused = false
-	b.Refresh()
 }
 
 // MouseIn darkens the ground.
@@ -94,9 +73,6 @@ func (b *Button) MouseOut() {
 	b.pointed = false
 	b.Refresh()
 }
-
-// Cursor is a hand.
-func (b *Button) Cursor() desktop.Cursor { return desktop.PointerCursor }
 
 // Enable makes the button work.
 func (b *Button) Enable() { b.setDisabled(false) }
@@ -117,9 +93,6 @@ func (b *Button) setDisabled(disabled bool) {
 // AccessibilityLabel is the text.
 func (b *Button) AccessibilityLabel() string { return b.text.Text }
 
-// AccessibilityRole is button.
-func (b *Button) AccessibilityRole() fyne.AccessibleRole { return fyne.AccessibleRoleButton }
-
 // HeightFor is that of a row, or of two lines of text.
 func (b *Button) HeightFor(width float32) float32 {
 	return max(px(rowHeight), b.text.HeightFor(width-2*px(space8))+px(space8))
@@ -128,32 +101,14 @@ func (b *Button) HeightFor(width float32) float32 {
 // CreateRenderer implements [fyne.Widget].
 func (b *Button) CreateRenderer() fyne.WidgetRenderer {
 	b.ExtendBaseWidget(b)
-	r := &buttonRenderer{button: b}
-	r.Layout(b.Size())
-	return r
+	return newPainting(b)
 }
 
-type buttonRenderer struct {
-	button *Button
-	parts  []fyne.CanvasObject
+func (b *Button) least() fyne.Size {
+	return fyne.NewSize(b.text.Width()+2*px(space12), px(rowHeight))
 }
 
-var _ fyne.WidgetRenderer = (*buttonRenderer)(nil)
-
-func (r *buttonRenderer) Destroy()                     {}
-func (r *buttonRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-func (r *buttonRenderer) MinSize() fyne.Size {
-	return fyne.NewSize(r.button.text.Width()+2*px(space12), px(rowHeight))
-}
-
-func (r *buttonRenderer) Refresh() {
-	r.Layout(r.button.Size())
-	canvas.Refresh(r.button)
-}
-
-func (r *buttonRenderer) Layout(size fyne.Size) {
-	b := r.button
+func (b *Button) paint(size fyne.Size) []fyne.CanvasObject {
 	ground, stroke, ink := ColorPanel, float32(lineNormal), ColorInk
 	switch {
 	case b.disabled:
@@ -168,6 +123,5 @@ func (r *buttonRenderer) Layout(size fyne.Size) {
 	height := b.text.HeightFor(size.Width - 2*px(space8))
 	b.text.Resize(fyne.NewSize(size.Width-2*px(space8), height))
 	b.text.Move(fyne.NewPos(px(space8), (size.Height-height)/2))
-	b.text.Refresh()
-	r.parts = append(framed(fyne.Position{}, size, ground, stroke, ink), b.text)
+	return append(framed(fyne.Position{}, size, ground, stroke, ink), b.text)
 }

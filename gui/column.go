@@ -80,23 +80,14 @@ func (c *Column) HeightFor(width float32) float32 { return c.layout.heightFor(c.
 // CreateRenderer implements [fyne.Widget].
 func (c *Column) CreateRenderer() fyne.WidgetRenderer {
 	c.ExtendBaseWidget(c)
-	return &columnRenderer{column: c}
+	return newPainting(c)
 }
 
-type columnRenderer struct{ column *Column }
+func (c *Column) least() fyne.Size { return c.layout.MinSize(c.Objects) }
 
-var _ fyne.WidgetRenderer = (*columnRenderer)(nil)
-
-func (r *columnRenderer) Destroy()                     {}
-func (r *columnRenderer) Objects() []fyne.CanvasObject { return r.column.Objects }
-func (r *columnRenderer) MinSize() fyne.Size           { return r.column.layout.MinSize(r.column.Objects) }
-func (r *columnRenderer) Layout(size fyne.Size)        { r.column.layout.Layout(r.column.Objects, size) }
-
-func (r *columnRenderer) Refresh() {
-	r.Layout(r.column.Size())
-	for _, o := range r.column.Objects {
-		o.Refresh()
-	}
+func (c *Column) paint(size fyne.Size) []fyne.CanvasObject {
+	c.layout.Layout(c.Objects, size)
+	return c.Objects
 }
 
 // Scroller shows a column that may be higher than the place for it.
@@ -144,25 +135,14 @@ func (s *Scroller) Reveal(o fyne.CanvasObject) {
 // CreateRenderer implements [fyne.Widget].
 func (s *Scroller) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)
-	return &scrollerRenderer{scroller: s}
+	return newPainting(s)
 }
 
-type scrollerRenderer struct{ scroller *Scroller }
+func (s *Scroller) least() fyne.Size { return fyne.Size{} }
 
-var _ fyne.WidgetRenderer = (*scrollerRenderer)(nil)
-
-func (r *scrollerRenderer) Destroy() {}
-func (r *scrollerRenderer) Objects() []fyne.CanvasObject {
-	return []fyne.CanvasObject{r.scroller.scroll}
-}
-func (r *scrollerRenderer) MinSize() fyne.Size { return fyne.Size{} }
-
-func (r *scrollerRenderer) Layout(size fyne.Size) {
-	r.scroller.Column.layout.width = size.Width
-	r.scroller.scroll.Resize(size)
-	r.scroller.Fit()
-}
-
-func (r *scrollerRenderer) Refresh() {
-	r.scroller.Fit()
+func (s *Scroller) paint(size fyne.Size) []fyne.CanvasObject {
+	s.Column.layout.width = size.Width
+	s.scroll.Resize(size)
+	s.Fit()
+	return []fyne.CanvasObject{s.scroll}
 }

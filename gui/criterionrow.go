@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -125,40 +124,18 @@ func (r *CriterionRow) HeightFor(width float32) float32 { return r.plan(width).t
 // CreateRenderer implements [fyne.Widget].
 func (r *CriterionRow) CreateRenderer() fyne.WidgetRenderer {
 	r.ExtendBaseWidget(r)
-	return &criterionRowRenderer{row: r}
+	return newPainting(r)
 }
 
-type criterionRowRenderer struct{ row *CriterionRow }
+func (r *CriterionRow) least() fyne.Size { return fyne.NewSize(0, r.HeightFor(r.Size().Width)) }
 
-var _ fyne.WidgetRenderer = (*criterionRowRenderer)(nil)
-
-func (c *criterionRowRenderer) Destroy() {}
-
-func (c *criterionRowRenderer) Objects() []fyne.CanvasObject {
-	r := c.row
-	return []fyne.CanvasObject{r.mark, r.name, r.margin, r.detail, r.button}
-}
-
-func (c *criterionRowRenderer) MinSize() fyne.Size {
-	return fyne.NewSize(0, c.row.HeightFor(c.row.Size().Width))
-}
-
-func (c *criterionRowRenderer) Refresh() {
-	c.Layout(c.row.Size())
-	for _, o := range c.Objects() {
-		o.Refresh()
-	}
-	canvas.Refresh(c.row)
-}
-
-func (c *criterionRowRenderer) Layout(size fyne.Size) {
-	r := c.row
+func (r *CriterionRow) paint(size fyne.Size) []fyne.CanvasObject {
 	p := r.plan(size.Width)
 	first := size.Height
 	if p.below {
 		first = px(rowHeight)
 	}
-	c.head(first)
+	r.placeHead(first)
 	top, high := float32(0), size.Height
 	if p.below {
 		top, high = first, size.Height-first
@@ -173,11 +150,12 @@ func (c *criterionRowRenderer) Layout(size fyne.Size) {
 	r.button.Resize(fyne.NewSize(min(px(mendWide), size.Width-at.X), button))
 	r.detail.Move(fyne.NewPos(p.left, top+(high-p.detail)/2))
 	r.detail.Resize(fyne.NewSize(p.room, p.detail))
+	return []fyne.CanvasObject{r.mark, r.name, r.margin, r.detail, r.button}
 }
 
-// head places mark, name and margin in the middle of a height.
-func (c *criterionRowRenderer) head(height float32) {
-	r, x := c.row, float32(0)
+// placeHead places mark, name and margin in the middle of a height.
+func (r *CriterionRow) placeHead(height float32) {
+	x := float32(0)
 	for _, part := range []struct {
 		object      fyne.CanvasObject
 		width, high float32

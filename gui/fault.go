@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -40,33 +39,15 @@ func (f *Fault) HeightFor(width float32) float32 { return f.prose.HeightFor(widt
 // CreateRenderer implements [fyne.Widget].
 func (f *Fault) CreateRenderer() fyne.WidgetRenderer {
 	f.ExtendBaseWidget(f)
-	r := &faultRenderer{fault: f}
-	r.Layout(f.Size())
-	return r
+	return newPainting(f)
 }
 
-type faultRenderer struct {
-	fault *Fault
-	parts []fyne.CanvasObject
+func (f *Fault) least() fyne.Size {
+	text := f.prose.MinSize()
+	return fyne.NewSize(text.Width+f.tagWidth(), text.Height)
 }
 
-var _ fyne.WidgetRenderer = (*faultRenderer)(nil)
-
-func (r *faultRenderer) Destroy()                     {}
-func (r *faultRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-func (r *faultRenderer) MinSize() fyne.Size {
-	least := r.fault.prose.MinSize()
-	return fyne.NewSize(least.Width+r.fault.tagWidth(), least.Height)
-}
-
-func (r *faultRenderer) Refresh() {
-	r.Layout(r.fault.Size())
-	canvas.Refresh(r.fault)
-}
-
-func (r *faultRenderer) Layout(size fyne.Size) {
-	f := r.fault
+func (f *Fault) paint(size fyne.Size) []fyne.CanvasObject {
 	height := f.prose.lineHeight()
 	tag := filled(fyne.NewPos(0, 1), fyne.NewSize(px(f.prose.TextSize), height-2), ColorInk)
 	mark := NewProse("!", f.prose.TextSize, 1).bold()
@@ -75,6 +56,5 @@ func (r *faultRenderer) Layout(size fyne.Size) {
 	mark.Move(fyne.NewPos((tag.Size().Width-mark.Width())/2, 0))
 	f.prose.Move(fyne.NewPos(f.tagWidth(), 0))
 	f.prose.Resize(fyne.NewSize(size.Width-f.tagWidth(), size.Height))
-	f.prose.Refresh()
-	r.parts = []fyne.CanvasObject{tag, mark, f.prose}
+	return []fyne.CanvasObject{tag, mark, f.prose}
 }

@@ -5,7 +5,6 @@ import (
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/driver/desktop"
-	"fyne.io/fyne/v2/widget"
 )
 
 // Grid is a table of texts. Its columns are as wide as their texts where there is
@@ -13,15 +12,13 @@ import (
 // with its cells below each other. The arrow keys move a frame over its cells;
 // Space, Enter or a click asks what a cell means.
 type Grid struct {
-	widget.BaseWidget
+	control
 	Columns []GridColumn
 	Rows    []GridRow
 	OnCell  func(row, column int)
-	OnKey   func(*fyne.KeyEvent) // keys that are not the grid's; may be nil
 
 	faded       bool // the texts are of before: soft
-	focused     bool
-	row, column int // of the frame
+	row, column int  // of the frame
 
 	measured      *gridLayout // of the width below; nil after a change
 	measuredWidth float32
@@ -109,31 +106,48 @@ func (g *Grid) TypedKey(e *fyne.KeyEvent) {
 		}
 		return
 	default:
-		if g.OnKey != nil {
-			g.OnKey(e)
-		}
+		g.unused(e)
 		return
 	}
 	g.Refresh()
 }
 
-// TypedRune does nothing.
-func (g *Grid) TypedRune(rune) {}
-
-// FocusGained shows the frame.
-func (g *Grid) FocusGained() {
-	g.focused = true
-	g.Refresh()
-}
-
-// FocusLost hides the frame.
-func (g *Grid) FocusLost() {
-	g.focused = false
-	g.Refresh()
-}
-
-// Cursor is a hand.
-func (g *Grid) Cursor() desktop.Cursor { return desktop.PointerCursor }
-
 // HeightFor is that of the rows in a width.
 func (g *Grid) HeightFor(width float32) float32 { return g.measure(width).height }
+
+// Refresh measures and draws the table anew.
+func (g *Grid) Refresh() {
+	g.measured = nil
+	g.control.Refresh()
+}
+
+// CreateRenderer implements [fyne.Widget].
+func (g *Grid) CreateRenderer() fyne.WidgetRenderer {
+	g.ExtendBaseWidget(g)
+	return newPainting(g)
+}
+
+func (g *Grid) least() fyne.Size { return fyne.NewSize(0, g.HeightFor(g.Size().Width)) }
+
+func (g *Grid) paint(size fyne.Size) []fyne.CanvasObject {
+	var parts []fyne.CanvasObject
+	l := g.measure(size.Width)
+	for i, ground := range l.rows {
+		if g.Rows[i].Chosen {
+			parts = append(parts, filled(ground.at, fyne.NewSize(size.Width, ground.size.Height), ColorPanel))
+		}
+	}
+	for _, y := range l.lines {
+		parts = append(parts, filled(fyne.NewPos(0, y), fyne.NewSize(size.Width, lineThin), ColorEdge))
+	}
+	for _, text := range slices.Concat(l.titles, l.texts) {
+		text.prose.Move(text.at)
+		text.prose.Resize(text.size)
+		parts = append(parts, text.prose)
+	}
+	if g.focused && len(g.Rows) > 0 {
+		cell := l.cells[g.row][g.column]
+		parts = append(parts, ring(cell.at, cell.size)...)
+	}
+	return parts
+}

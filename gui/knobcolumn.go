@@ -4,7 +4,6 @@ import (
 	"slices"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -194,35 +193,16 @@ func (k *KnobColumn) Reveal(id string) {
 // CreateRenderer implements [fyne.Widget].
 func (k *KnobColumn) CreateRenderer() fyne.WidgetRenderer {
 	k.ExtendBaseWidget(k)
-	return &knobColumnRenderer{column: k, ground: canvas.NewRectangle(tint(ColorPanel)), edge: canvas.NewRectangle(tint(ColorEdge))}
+	return newPainting(k)
 }
 
-type knobColumnRenderer struct {
-	column       *KnobColumn
-	ground, edge *canvas.Rectangle
-}
+func (k *KnobColumn) least() fyne.Size { return fyne.NewSize(k.Metrics.Knobs, 0) }
 
-var _ fyne.WidgetRenderer = (*knobColumnRenderer)(nil)
-
-func (r *knobColumnRenderer) Destroy() {}
-
-func (r *knobColumnRenderer) Objects() []fyne.CanvasObject {
-	return []fyne.CanvasObject{r.ground, r.column.scroller, r.edge}
-}
-
-func (r *knobColumnRenderer) MinSize() fyne.Size { return fyne.NewSize(r.column.Metrics.Knobs, 0) }
-
-func (r *knobColumnRenderer) Refresh() {
-	r.ground.FillColor, r.edge.FillColor = tint(ColorPanel), tint(ColorEdge)
-	r.Layout(r.column.Size())
-	for _, o := range r.Objects() {
-		o.Refresh()
+func (k *KnobColumn) paint(size fyne.Size) []fyne.CanvasObject {
+	k.scroller.Resize(fyne.NewSize(size.Width-lineThin, size.Height))
+	return []fyne.CanvasObject{
+		filled(fyne.Position{}, size, ColorPanel),
+		k.scroller,
+		filled(fyne.NewPos(size.Width-lineThin, 0), fyne.NewSize(lineThin, size.Height), ColorEdge),
 	}
-}
-
-func (r *knobColumnRenderer) Layout(size fyne.Size) {
-	r.ground.Resize(size)
-	r.edge.Move(fyne.NewPos(size.Width-lineThin, 0))
-	r.edge.Resize(fyne.NewSize(lineThin, size.Height))
-	r.column.scroller.Resize(fyne.NewSize(size.Width-lineThin, size.Height))
 }

@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -52,34 +51,16 @@ func (l *KnobLabel) TappedSecondary(e *fyne.PointEvent) { l.OnMenu(e.AbsolutePos
 // CreateRenderer implements [fyne.Widget].
 func (l *KnobLabel) CreateRenderer() fyne.WidgetRenderer {
 	l.ExtendBaseWidget(l)
-	return &knobLabelRenderer{label: l}
+	return newPainting(l)
 }
 
-type knobLabelRenderer struct{ label *KnobLabel }
-
-var _ fyne.WidgetRenderer = (*knobLabelRenderer)(nil)
-
-func (r *knobLabelRenderer) Destroy() {}
-
-func (r *knobLabelRenderer) Objects() []fyne.CanvasObject {
-	return []fyne.CanvasObject{r.label.name, r.label.origin}
+func (l *KnobLabel) least() fyne.Size {
+	return fyne.NewSize(max(l.name.Width(), l.origin.Width()), l.name.lineHeight()+l.origin.lineHeight())
 }
 
-func (r *knobLabelRenderer) MinSize() fyne.Size {
-	name, origin := r.label.name, r.label.origin
-	return fyne.NewSize(max(name.Width(), origin.Width()), name.lineHeight()+origin.lineHeight())
-}
-
-func (r *knobLabelRenderer) Refresh() {
-	r.Layout(r.label.Size())
-	r.label.name.Refresh()
-	r.label.origin.Refresh()
-	canvas.Refresh(r.label)
-}
-
-// Layout centres the lines; an empty second one takes no room.
-func (r *knobLabelRenderer) Layout(size fyne.Size) {
-	name, origin := r.label.name, r.label.origin
+// paint centres the lines; an empty second one takes no room.
+func (l *KnobLabel) paint(size fyne.Size) []fyne.CanvasObject {
+	name, origin := l.name, l.origin
 	total := name.lineHeight()
 	if origin.Text != "" {
 		total += origin.lineHeight()
@@ -89,4 +70,5 @@ func (r *knobLabelRenderer) Layout(size fyne.Size) {
 	name.Resize(fyne.NewSize(size.Width, name.lineHeight()))
 	origin.Move(fyne.NewPos(0, top+name.lineHeight()))
 	origin.Resize(fyne.NewSize(size.Width, origin.lineHeight()))
+	return []fyne.CanvasObject{name, origin}
 }

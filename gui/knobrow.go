@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -102,46 +101,30 @@ func (r *KnobRow) HeightFor(width float32) float32 {
 // CreateRenderer implements [fyne.Widget].
 func (r *KnobRow) CreateRenderer() fyne.WidgetRenderer {
 	r.ExtendBaseWidget(r)
-	return &knobRowRenderer{row: r}
+	return newPainting(r)
 }
 
-type knobRowRenderer struct{ row *KnobRow }
-
-var _ fyne.WidgetRenderer = (*knobRowRenderer)(nil)
-
-func (r *knobRowRenderer) Destroy() {}
-
-func (r *knobRowRenderer) Objects() []fyne.CanvasObject {
-	row := r.row
-	return []fyne.CanvasObject{row.label, row.field, row.note, row.fault, row.slider}
+func (r *KnobRow) least() fyne.Size {
+	return fyne.NewSize(r.FieldWidth, r.HeightFor(r.Size().Width))
 }
 
-func (r *knobRowRenderer) MinSize() fyne.Size {
-	return fyne.NewSize(r.row.FieldWidth, r.row.HeightFor(r.row.Size().Width))
-}
-
-func (r *knobRowRenderer) Refresh() {
-	r.Layout(r.row.Size())
-	canvas.Refresh(r.row)
-}
-
-func (r *knobRowRenderer) Layout(size fyne.Size) {
-	row := r.row
-	field := min(row.FieldWidth, size.Width)
-	row.label.Move(fyne.NewPos(0, 0))
-	row.label.Resize(fyne.NewSize(size.Width-field-px(space8), px(knobHigh)))
-	row.field.Move(fyne.NewPos(size.Width-field, (px(knobHigh)-px(rowHeight))/2))
-	row.field.Resize(fyne.NewSize(field, px(rowHeight)))
+func (r *KnobRow) paint(size fyne.Size) []fyne.CanvasObject {
+	field := min(r.FieldWidth, size.Width)
+	r.label.Move(fyne.NewPos(0, 0))
+	r.label.Resize(fyne.NewSize(size.Width-field-px(space8), px(knobHigh)))
+	r.field.Move(fyne.NewPos(size.Width-field, (px(knobHigh)-px(rowHeight))/2))
+	r.field.Resize(fyne.NewSize(field, px(rowHeight)))
 	y := px(knobHigh)
-	if row.note.Visible() {
-		y = place(row.note, y, size.Width)
+	if r.note.Visible() {
+		y = place(r.note, y, size.Width)
 	}
-	if row.fault.Visible() {
-		y = place(row.fault, y+px(space4), size.Width)
+	if r.fault.Visible() {
+		y = place(r.fault, y+px(space4), size.Width)
 	}
-	if row.slider.Visible() {
-		place(row.slider, y+px(space4), size.Width)
+	if r.slider.Visible() {
+		place(r.slider, y+px(space4), size.Width)
 	}
+	return []fyne.CanvasObject{r.label, r.field, r.note, r.fault, r.slider}
 }
 
 // place puts an object at a height, over a width, and returns where it ends.

@@ -5,7 +5,6 @@ import (
 	"slices"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
 
@@ -157,66 +156,52 @@ const (
 // CreateRenderer implements [fyne.Widget].
 func (s *KnobSlider) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)
-	r := &knobSliderRenderer{slider: s}
-	r.Layout(s.Size())
-	return r
+	return newPainting(s)
 }
 
-type knobSliderRenderer struct {
-	slider *KnobSlider
-	parts  []fyne.CanvasObject
-}
+func (s *KnobSlider) least() fyne.Size { return fyne.NewSize(px(space24), px(sliderHigh)) }
 
-var _ fyne.WidgetRenderer = (*knobSliderRenderer)(nil)
-
-func (r *knobSliderRenderer) Destroy()                     {}
-func (r *knobSliderRenderer) Objects() []fyne.CanvasObject { return r.parts }
-func (r *knobSliderRenderer) MinSize() fyne.Size           { return fyne.NewSize(px(space24), px(sliderHigh)) }
-
-func (r *knobSliderRenderer) Refresh() {
-	r.Layout(r.slider.Size())
-	canvas.Refresh(r.slider)
-}
-
-func (r *knobSliderRenderer) add(o ...fyne.CanvasObject) { r.parts = append(r.parts, o...) }
-
-func (r *knobSliderRenderer) Layout(size fyne.Size) {
-	s := r.slider
-	r.parts = nil
+func (s *KnobSlider) paint(fyne.Size) []fyne.CanvasObject {
 	left, right := s.ends()
 	middle := px(trackTop + trackHeight/2)
-	r.add(filled(fyne.NewPos(left, middle), fyne.NewSize(right-left, lineThin), ColorEdge))
+	parts := []fyne.CanvasObject{filled(fyne.NewPos(left, middle), fyne.NewSize(right-left, lineThin), ColorEdge)}
 	if s.track != nil {
 		for _, part := range stretches(s.track) {
-			r.stretch(part)
+			parts = append(parts, s.paintStretch(part)...)
 		}
 	}
-	r.add(framed(fyne.NewPos(s.x(s.value)-px(handleWide)/2, 0), fyne.NewSize(px(handleWide), px(handleHigh)), ColorInk, lineThin, ColorPaper)...)
+	parts = append(parts, framed(fyne.NewPos(s.x(s.value)-px(handleWide)/2, 0), fyne.NewSize(px(handleWide), px(handleHigh)), ColorInk, lineThin, ColorPaper)...)
 	low := NewProse(s.lowText, textAxis, 1).soft()
 	low.Resize(low.MinSize())
 	top := NewProse(s.topText, textAxis, 1).soft()
 	top.Resize(top.MinSize())
 	low.Move(fyne.NewPos(left, px(handleHigh)))
 	top.Move(fyne.NewPos(right-top.Width(), px(handleHigh)))
-	r.add(low, top)
+	return append(parts, low, top)
 }
 
-// stretch draws one part of the track.
-func (r *knobSliderRenderer) stretch(part stretch) {
-	from, to := r.slider.x(part.from), r.slider.x(part.to)
+// paintStretch draws one part of the track.
+func (s *KnobSlider) paintStretch(part stretch) []fyne.CanvasObject {
+	from, to := s.x(part.from), s.x(part.to)
 	at, size := fyne.NewPos(from, px(trackTop)), fyne.NewSize(to-from, px(trackHeight))
 	switch part.verdict {
 	case sealed:
-		r.add(filled(at, size, ColorBlue))
+		return []fyne.CanvasObject{filled(at, size, ColorBlue)}
 	case leaky:
-		r.add(framed(at, size, ColorYellow, lineNormal, ColorInk)...)
+		return framed(at, size, ColorYellow, lineNormal, ColorInk)
 	case open:
-		for x := from; x < to; x += 5 {
-			r.add(filled(fyne.NewPos(x, at.Y), fyne.NewSize(min(2.5, to-x), size.Height), ColorRed))
-		}
+		return pattern(at, size, 2.5, 5, ColorRed)
 	case astray:
-		for x := from; x < to; x += 6 {
-			r.add(filled(fyne.NewPos(x, at.Y+size.Height/2-1), fyne.NewSize(min(2, to-x), 2), ColorInk))
-		}
+		return pattern(at.AddXY(0, size.Height/2-1), fyne.NewSize(size.Width, 2), 2, 6, ColorInk)
 	}
+	return nil
+}
+
+// pattern fills a stretch with marks of a width, each so far behind the one before.
+func pattern(at fyne.Position, size fyne.Size, wide, every float32, fill fyne.ThemeColorName) []fyne.CanvasObject {
+	var marks []fyne.CanvasObject
+	for x := float32(0); x < size.Width; x += every {
+		marks = append(marks, filled(at.AddXY(x, 0), fyne.NewSize(min(wide, size.Width-x), size.Height), fill))
+	}
+	return marks
 }

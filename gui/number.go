@@ -2,21 +2,17 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
-	"fyne.io/fyne/v2/widget"
 )
 
 // Number is a number that explains itself: a click, Space or Enter opens the strip
 // with its formula.
 type Number struct {
-	widget.BaseWidget
+	control
 	OnExplain func(topic string)
-	OnKey     func(*fyne.KeyEvent) // keys that are not the number's
 
-	text    *Prose
-	topic   string
-	focused bool
+	text  *Prose
+	topic string
 }
 
 var (
@@ -28,7 +24,8 @@ var (
 
 // NewNumber returns a number without a value.
 func NewNumber(explain func(string), key func(*fyne.KeyEvent)) *Number {
-	n := &Number{OnExplain: explain, OnKey: key, text: NewProse("", textBody, 1).right()}
+	n := &Number{OnExplain: explain, text: NewProse("", textBody, 1).right()}
+	n.OnKey = key
 	n.ExtendBaseWidget(n)
 	return n
 }
@@ -48,62 +45,26 @@ func (n *Number) TypedKey(e *fyne.KeyEvent) {
 	case fyne.KeySpace, fyne.KeyReturn, fyne.KeyEnter:
 		n.Tapped(nil)
 	default:
-		n.OnKey(e)
+		n.unused(e)
 	}
 }
-
-// TypedRune does nothing.
-func (n *Number) TypedRune(rune) {}
-
-// FocusGained shows the focus.
-func (n *Number) FocusGained() {
-	n.focused = true
-	n.Refresh()
-}
-
-// FocusLost hides the focus.
-func (n *Number) FocusLost() {
-	n.focused = false
-	n.Refresh()
-}
-
-// Cursor is a hand.
-func (n *Number) Cursor() desktop.Cursor { return desktop.PointerCursor }
 
 // CreateRenderer implements [fyne.Widget].
 func (n *Number) CreateRenderer() fyne.WidgetRenderer {
 	n.ExtendBaseWidget(n)
-	r := &numberRenderer{number: n}
-	r.Layout(n.Size())
-	return r
+	return newPainting(n)
 }
 
-type numberRenderer struct {
-	number *Number
-	parts  []fyne.CanvasObject
+func (n *Number) least() fyne.Size {
+	return n.text.MinSize().AddWidthHeight(2*px(space4), px(space8))
 }
 
-var _ fyne.WidgetRenderer = (*numberRenderer)(nil)
-
-func (r *numberRenderer) Destroy()                     {}
-func (r *numberRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-func (r *numberRenderer) MinSize() fyne.Size {
-	return r.number.text.MinSize().AddWidthHeight(2*px(space4), px(space8))
-}
-
-func (r *numberRenderer) Refresh() {
-	r.Layout(r.number.Size())
-	r.number.text.Refresh()
-	canvas.Refresh(r.number)
-}
-
-func (r *numberRenderer) Layout(size fyne.Size) {
-	n := r.number
+func (n *Number) paint(size fyne.Size) []fyne.CanvasObject {
 	n.text.Move(fyne.NewPos(px(space4), (size.Height-n.text.lineHeight())/2))
 	n.text.Resize(fyne.NewSize(size.Width-2*px(space4), n.text.lineHeight()))
-	r.parts = []fyne.CanvasObject{n.text}
+	parts := []fyne.CanvasObject{n.text}
 	if n.focused {
-		r.parts = append(r.parts, ring(fyne.Position{}, size)...)
+		parts = append(parts, ring(fyne.Position{}, size)...)
 	}
+	return parts
 }

@@ -2,9 +2,7 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
-	"fyne.io/fyne/v2/widget"
 )
 
 // PageCell is what the switch says of a page: its name over its key number.
@@ -12,14 +10,11 @@ type PageCell struct{ Name, Number string }
 
 // PageSwitch chooses the page, by a click or the arrow keys.
 type PageSwitch struct {
-	widget.BaseWidget
+	control
 	Metrics  Metrics
 	Cells    []PageCell
 	Chosen   int
 	OnChosen func(int)
-	OnKey    func(*fyne.KeyEvent) // keys that are not the switch's
-
-	focused bool
 }
 
 var (
@@ -32,7 +27,8 @@ var (
 
 // NewPageSwitch returns a switch without pages.
 func NewPageSwitch(chosen func(int), key func(*fyne.KeyEvent)) *PageSwitch {
-	s := &PageSwitch{Metrics: metrics[fullFold], OnChosen: chosen, OnKey: key}
+	s := &PageSwitch{Metrics: metrics[fullFold], OnChosen: chosen}
+	s.OnKey = key
 	s.ExtendBaseWidget(s)
 	return s
 }
@@ -68,27 +64,9 @@ func (s *PageSwitch) TypedKey(e *fyne.KeyEvent) {
 	case fyne.KeyLeft:
 		s.choose(s.Chosen - 1)
 	default:
-		s.OnKey(e)
+		s.unused(e)
 	}
 }
-
-// TypedRune does nothing.
-func (s *PageSwitch) TypedRune(rune) {}
-
-// FocusGained shows the focus.
-func (s *PageSwitch) FocusGained() {
-	s.focused = true
-	s.Refresh()
-}
-
-// FocusLost hides the focus.
-func (s *PageSwitch) FocusLost() {
-	s.focused = false
-	s.Refresh()
-}
-
-// Cursor is a hand.
-func (s *PageSwitch) Cursor() desktop.Cursor { return desktop.PointerCursor }
 
 // AccessibilityLabel is the name of the page.
 func (s *PageSwitch) AccessibilityLabel() string {
@@ -98,58 +76,39 @@ func (s *PageSwitch) AccessibilityLabel() string {
 	return s.Cells[s.Chosen].Name
 }
 
-// AccessibilityRole is button.
-func (s *PageSwitch) AccessibilityRole() fyne.AccessibleRole { return fyne.AccessibleRoleButton }
-
 // CreateRenderer implements [fyne.Widget].
 func (s *PageSwitch) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)
-	r := &pageSwitchRenderer{pages: s}
-	r.Layout(s.Size())
-	return r
+	return newPainting(s)
 }
 
-type pageSwitchRenderer struct {
-	pages *PageSwitch
-	parts []fyne.CanvasObject
-}
+func (s *PageSwitch) least() fyne.Size { return fyne.NewSize(0, s.Metrics.Switch) }
 
-var _ fyne.WidgetRenderer = (*pageSwitchRenderer)(nil)
-
-func (r *pageSwitchRenderer) Destroy()                     {}
-func (r *pageSwitchRenderer) Objects() []fyne.CanvasObject { return r.parts }
-func (r *pageSwitchRenderer) MinSize() fyne.Size           { return fyne.NewSize(0, r.pages.Metrics.Switch) }
-
-func (r *pageSwitchRenderer) Refresh() {
-	r.Layout(r.pages.Size())
-	canvas.Refresh(r.pages)
-}
-
-// Layout draws the chosen page's cell as a part of the page below it.
-func (r *pageSwitchRenderer) Layout(size fyne.Size) {
-	s := r.pages
-	r.parts = []fyne.CanvasObject{
+// paint draws the chosen page's cell as a part of the page below it.
+func (s *PageSwitch) paint(size fyne.Size) []fyne.CanvasObject {
+	parts := []fyne.CanvasObject{
 		filled(fyne.Position{}, size, ColorPanel),
 		filled(fyne.NewPos(0, size.Height-lineThin), fyne.NewSize(size.Width, lineThin), ColorEdge),
 	}
 	for i := range s.Cells {
-		r.cell(i, fyne.NewPos(float32(i)*s.cell(), 0), fyne.NewSize(s.cell(), size.Height))
+		parts = append(parts, s.paintCell(i, fyne.NewPos(float32(i)*s.cell(), 0), fyne.NewSize(s.cell(), size.Height))...)
 	}
+	return parts
 }
 
-func (r *pageSwitchRenderer) cell(i int, at fyne.Position, size fyne.Size) {
-	s := r.pages
+func (s *PageSwitch) paintCell(i int, at fyne.Position, size fyne.Size) []fyne.CanvasObject {
+	var parts []fyne.CanvasObject
 	name := NewProse(s.Cells[i].Name, textBody, 1)
 	number := NewProse(s.Cells[i].Number, textAxis, 1).soft()
 	if i == s.Chosen {
 		name.Bold = true
-		r.parts = append(r.parts,
+		parts = append(parts,
 			filled(at, size, ColorPaper),
 			filled(at, fyne.NewSize(size.Width, lineLid), ColorInk),
 			filled(at.AddXY(size.Width-lineThin, 0), fyne.NewSize(lineThin, size.Height), ColorEdge))
 	}
 	if i == s.Chosen && s.focused {
-		r.parts = append(r.parts, ring(at.AddXY(2, 6), size.SubtractWidthHeight(4, 8))...)
+		parts = append(parts, ring(at.AddXY(2, 6), size.SubtractWidthHeight(4, 8))...)
 	}
 	inner := size.Width - 2*px(space8)
 	top := (size.Height - name.lineHeight() - number.lineHeight()) / 2
@@ -157,6 +116,7 @@ func (r *pageSwitchRenderer) cell(i int, at fyne.Position, size fyne.Size) {
 		line.Move(at.AddXY(px(space8), top+lineLid/2))
 		line.Resize(fyne.NewSize(inner, line.lineHeight()))
 		top += line.lineHeight()
-		r.parts = append(r.parts, line)
+		parts = append(parts, line)
 	}
+	return parts
 }

@@ -161,31 +161,11 @@ func (p *Prose) Cut() bool {
 // CreateRenderer implements [fyne.Widget].
 func (p *Prose) CreateRenderer() fyne.WidgetRenderer {
 	p.ExtendBaseWidget(p)
-	r := &proseRenderer{prose: p}
-	r.Layout(p.Size())
-	return r
+	return newPainting(p)
 }
 
-// proseRenderer draws one text object for each run of each line.
-type proseRenderer struct {
-	prose *Prose
-	runs  []fyne.CanvasObject
-}
-
-var _ fyne.WidgetRenderer = (*proseRenderer)(nil)
-
-func (r *proseRenderer) Destroy() {}
-
-func (r *proseRenderer) Objects() []fyne.CanvasObject { return r.runs }
-
-func (r *proseRenderer) Refresh() {
-	r.Layout(r.prose.Size())
-	canvas.Refresh(r.prose)
-}
-
-// MinSize is the whole text for one line, else the widest word by the lines.
-func (r *proseRenderer) MinSize() fyne.Size {
-	p := r.prose
+// least is the whole text for one line, else the widest word by the lines.
+func (p *Prose) least() fyne.Size {
 	if p.Lines == 1 {
 		return fyne.NewSize(p.Width(), p.lineHeight())
 	}
@@ -196,12 +176,12 @@ func (r *proseRenderer) MinSize() fyne.Size {
 	return fyne.NewSize(width, float32(max(p.Lines, 1))*p.lineHeight())
 }
 
-func (r *proseRenderer) Layout(size fyne.Size) {
-	r.runs = nil
-	p := r.prose
+// paint draws one text object for each run of each line.
+func (p *Prose) paint(size fyne.Size) []fyne.CanvasObject {
 	if p.Text == "" {
-		return
+		return nil
 	}
+	var texts []fyne.CanvasObject
 	height := p.lineHeight()
 	for i, line := range p.wrap(size.Width) {
 		x := float32(0)
@@ -211,26 +191,28 @@ func (r *proseRenderer) Layout(size fyne.Size) {
 		case fyne.TextAlignCenter:
 			x = rest / 2
 		}
-		r.line(line, fyne.NewPos(x, float32(i)*height))
+		texts = append(texts, p.paintLine(line, fyne.NewPos(x, float32(i)*height))...)
 	}
+	return texts
 }
 
-// line adds the runs of a line, all on the baseline of the lowest.
-func (r *proseRenderer) line(line string, at fyne.Position) {
-	p := r.prose
+// paintLine draws the runs of a line, all on the baseline of the lowest.
+func (p *Prose) paintLine(line string, at fyne.Position) []fyne.CanvasObject {
 	list := runsOf(line, p.style)
 	ascent := float32(0)
 	for _, run := range list {
 		_, baseline := measure(run.text, px(p.TextSize), run.style)
 		ascent = max(ascent, baseline)
 	}
-	for _, run := range list {
+	texts := make([]fyne.CanvasObject, len(list))
+	for i, run := range list {
 		text := canvas.NewText(run.text, tint(p.Color))
 		text.TextSize, text.TextStyle = px(p.TextSize), run.style
 		size, baseline := measure(run.text, text.TextSize, run.style)
 		text.Resize(size)
 		text.Move(at.AddXY(0, ascent-baseline))
-		r.runs = append(r.runs, text)
+		texts[i] = text
 		at.X += size.Width
 	}
+	return texts
 }

@@ -2,23 +2,18 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
-	"fyne.io/fyne/v2/widget"
 )
 
 // Segmented lets one of a few words be chosen, by a click or the arrow keys. Its
 // cells flow over as many rows as they need. The chosen one is inverse and bold.
 type Segmented struct {
-	widget.BaseWidget
+	control
 
 	Cells    []string
 	Chosen   int  // -1 for none
 	Linked   bool // a line leads through the cells: they follow each other in time
 	OnChosen func(int)
-	OnKey    func(*fyne.KeyEvent) // keys that are not the widget's; may be nil
-
-	focused bool
 }
 
 var (
@@ -70,29 +65,9 @@ func (s *Segmented) TypedKey(e *fyne.KeyEvent) {
 	case fyne.KeyEnd:
 		s.choose(len(s.Cells) - 1)
 	default:
-		if s.OnKey != nil {
-			s.OnKey(e)
-		}
+		s.unused(e)
 	}
 }
-
-// TypedRune does nothing.
-func (s *Segmented) TypedRune(rune) {}
-
-// FocusGained shows the focus.
-func (s *Segmented) FocusGained() {
-	s.focused = true
-	s.Refresh()
-}
-
-// FocusLost hides the focus.
-func (s *Segmented) FocusLost() {
-	s.focused = false
-	s.Refresh()
-}
-
-// Cursor is a hand.
-func (s *Segmented) Cursor() desktop.Cursor { return desktop.PointerCursor }
 
 // AccessibilityLabel is the chosen word.
 func (s *Segmented) AccessibilityLabel() string {
@@ -101,9 +76,6 @@ func (s *Segmented) AccessibilityLabel() string {
 	}
 	return s.Cells[s.Chosen]
 }
-
-// AccessibilityRole is button.
-func (s *Segmented) AccessibilityRole() fyne.AccessibleRole { return fyne.AccessibleRoleButton }
 
 // box is the place of a cell.
 type box struct {
@@ -159,42 +131,25 @@ func (s *Segmented) HeightFor(width float32) float32 {
 // CreateRenderer implements [fyne.Widget].
 func (s *Segmented) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)
-	r := &segmentedRenderer{segmented: s}
-	r.Layout(s.Size())
-	return r
+	return newPainting(s)
 }
 
-type segmentedRenderer struct {
-	segmented *Segmented
-	parts     []fyne.CanvasObject
-}
+func (s *Segmented) least() fyne.Size { return fyne.NewSize(0, px(cellHeight)) }
 
-var _ fyne.WidgetRenderer = (*segmentedRenderer)(nil)
-
-func (r *segmentedRenderer) Destroy()                     {}
-func (r *segmentedRenderer) Objects() []fyne.CanvasObject { return r.parts }
-func (r *segmentedRenderer) MinSize() fyne.Size           { return fyne.NewSize(0, px(cellHeight)) }
-
-func (r *segmentedRenderer) Refresh() {
-	r.Layout(r.segmented.Size())
-	canvas.Refresh(r.segmented)
-}
-
-func (r *segmentedRenderer) Layout(size fyne.Size) {
-	r.parts = nil
-	s := r.segmented
+func (s *Segmented) paint(size fyne.Size) []fyne.CanvasObject {
+	var parts []fyne.CanvasObject
 	for i, box := range s.boxes(size.Width) {
 		if s.Linked && i > 0 && box.at.X > 0 {
 			middle := box.at.AddXY(-px(s.gap())-1, box.size.Height/2-lineNormal/2)
-			r.parts = append(r.parts, filled(middle, fyne.NewSize(px(s.gap())+2, lineNormal), ColorEdge))
+			parts = append(parts, filled(middle, fyne.NewSize(px(s.gap())+2, lineNormal), ColorEdge))
 		}
-		r.cell(i, box)
+		parts = append(parts, s.paintCell(i, box)...)
 	}
+	return parts
 }
 
-// cell draws one word in its box.
-func (r *segmentedRenderer) cell(i int, box box) {
-	s := r.segmented
+// paintCell draws one word in its box.
+func (s *Segmented) paintCell(i int, box box) []fyne.CanvasObject {
 	ground, ink := ColorPaper, ColorInk
 	label := s.label(i)
 	if i == s.Chosen {
@@ -202,14 +157,14 @@ func (r *segmentedRenderer) cell(i int, box box) {
 	} else {
 		label.Bold = false
 	}
-	r.parts = append(r.parts, framed(box.at, box.size, ground, lineThin, ColorEdge)...)
+	parts := framed(box.at, box.size, ground, lineThin, ColorEdge)
 	if i == s.Chosen && s.focused {
-		r.parts = append(r.parts, outline(box.at.AddXY(2, 2), box.size.SubtractWidthHeight(4, 4), lineNormal, ColorPaper)...)
-		r.parts = append(r.parts, ring(box.at.AddXY(-3, -3), box.size.AddWidthHeight(6, 6))...)
+		parts = append(parts, outline(box.at.AddXY(2, 2), box.size.SubtractWidthHeight(4, 4), lineNormal, ColorPaper)...)
+		parts = append(parts, ring(box.at.AddXY(-3, -3), box.size.AddWidthHeight(6, 6))...)
 	}
 	label.Color = ink
 	width := label.Width()
 	label.Resize(fyne.NewSize(width, label.lineHeight()))
 	label.Move(box.at.AddXY((box.size.Width-width)/2, (box.size.Height-label.lineHeight())/2))
-	r.parts = append(r.parts, label)
+	return append(parts, label)
 }

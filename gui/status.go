@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -84,40 +83,19 @@ func documentLine(s session.State) string {
 // CreateRenderer implements [fyne.Widget].
 func (l *StatusLine) CreateRenderer() fyne.WidgetRenderer {
 	l.ExtendBaseWidget(l)
-	r := &statusRenderer{line: l}
-	r.Layout(l.Size())
-	return r
+	return newPainting(l)
 }
 
-type statusRenderer struct {
-	line  *StatusLine
-	parts []fyne.CanvasObject
-}
+func (l *StatusLine) least() fyne.Size { return fyne.NewSize(0, l.Metrics.Status) }
 
-var _ fyne.WidgetRenderer = (*statusRenderer)(nil)
-
-func (r *statusRenderer) Destroy()                     {}
-func (r *statusRenderer) Objects() []fyne.CanvasObject { return r.parts }
-func (r *statusRenderer) MinSize() fyne.Size           { return fyne.NewSize(0, r.line.Metrics.Status) }
-
-func (r *statusRenderer) Refresh() {
-	r.Layout(r.line.Size())
-	for _, o := range r.parts {
-		o.Refresh()
-	}
-	canvas.Refresh(r.line)
-}
-
-func (r *statusRenderer) Layout(size fyne.Size) {
-	l := r.line
-	r.parts = []fyne.CanvasObject{
+func (l *StatusLine) paint(size fyne.Size) []fyne.CanvasObject {
+	parts := []fyne.CanvasObject{
 		filled(fyne.Position{}, size, ColorPanel),
 		filled(fyne.Position{}, fyne.NewSize(size.Width, lineThin), ColorEdge),
 	}
 	if l.busy {
-		r.parts = append(r.parts, filled(fyne.Position{}, fyne.NewSize(size.Width*l.part, space4), ColorInk))
+		parts = append(parts, filled(fyne.Position{}, fyne.NewSize(size.Width*l.part, space4), ColorInk))
 	}
-	r.parts = append(r.parts, l.left, l.right, l.stop)
 	pad, high := px(space12), l.left.lineHeight()
 	right := min(l.right.Width(), size.Width/2)
 	l.right.Move(fyne.NewPos(size.Width-pad-right, (size.Height-high)/2))
@@ -131,4 +109,5 @@ func (r *statusRenderer) Layout(size fyne.Size) {
 	}
 	l.left.Move(fyne.NewPos(pad, (size.Height-high)/2))
 	l.left.Resize(fyne.NewSize(room, high))
+	return append(parts, l.left, l.right, l.stop)
 }

@@ -2,7 +2,6 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -56,35 +55,12 @@ func (s *Strip) textWidth(width float32) float32 {
 // CreateRenderer implements [fyne.Widget].
 func (s *Strip) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)
-	r := &stripRenderer{strip: s}
-	r.Layout(s.Size())
-	return r
+	return newPainting(s)
 }
 
-type stripRenderer struct {
-	strip *Strip
-	parts []fyne.CanvasObject
-}
+func (s *Strip) least() fyne.Size { return fyne.NewSize(0, s.HeightFor(s.Size().Width)) }
 
-var _ fyne.WidgetRenderer = (*stripRenderer)(nil)
-
-func (r *stripRenderer) Destroy()                     {}
-func (r *stripRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-func (r *stripRenderer) MinSize() fyne.Size {
-	return fyne.NewSize(0, r.strip.HeightFor(r.strip.Size().Width))
-}
-
-func (r *stripRenderer) Refresh() {
-	r.Layout(r.strip.Size())
-	for _, o := range r.parts {
-		o.Refresh()
-	}
-	canvas.Refresh(r.strip)
-}
-
-func (r *stripRenderer) Layout(size fyne.Size) {
-	s := r.strip
+func (s *Strip) paint(size fyne.Size) []fyne.CanvasObject {
 	width := s.textWidth(size.Width)
 	s.formula.Move(fyne.NewPos(px(space12), px(space8)))
 	s.formula.Resize(fyne.NewSize(width, s.formula.HeightFor(width)))
@@ -93,7 +69,7 @@ func (r *stripRenderer) Layout(size fyne.Size) {
 	button := s.close.MinSize()
 	s.close.Move(fyne.NewPos(size.Width-button.Width-px(space12), (size.Height-button.Height)/2))
 	s.close.Resize(button)
-	r.parts = []fyne.CanvasObject{
+	return []fyne.CanvasObject{
 		filled(fyne.Position{}, size, ColorPanel),
 		filled(fyne.Position{}, fyne.NewSize(size.Width, lineThin), ColorEdge),
 		s.formula, s.inputs, s.close,

@@ -7,7 +7,6 @@ import (
 	"unicode/utf8"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/widget"
 
 	"hilltop/gui/session"
@@ -140,42 +139,13 @@ func notApplied(n int) string {
 // CreateRenderer implements [fyne.Widget].
 func (v *VerdictBar) CreateRenderer() fyne.WidgetRenderer {
 	v.ExtendBaseWidget(v)
-	r := &verdictBarRenderer{bar: v, ground: canvas.NewRectangle(tint(ColorPanel)), edge: canvas.NewRectangle(tint(ColorEdge))}
-	r.Layout(v.Size())
-	return r
+	return newPainting(v)
 }
 
-type verdictBarRenderer struct {
-	bar          *VerdictBar
-	ground, edge *canvas.Rectangle
-}
+func (v *VerdictBar) least() fyne.Size { return fyne.NewSize(0, v.Metrics.Verdict) }
 
-var _ fyne.WidgetRenderer = (*verdictBarRenderer)(nil)
-
-func (r *verdictBarRenderer) Destroy() {}
-
-func (r *verdictBarRenderer) Objects() []fyne.CanvasObject {
-	v := r.bar
-	return []fyne.CanvasObject{r.ground, r.edge, v.badge, v.word, v.sentence, v.fault, v.unapplied, v.button}
-}
-
-func (r *verdictBarRenderer) MinSize() fyne.Size { return fyne.NewSize(0, r.bar.Metrics.Verdict) }
-
-func (r *verdictBarRenderer) Refresh() {
-	r.ground.FillColor, r.edge.FillColor = tint(ColorPanel), tint(ColorEdge)
-	r.Layout(r.bar.Size())
-	for _, o := range r.Objects() {
-		o.Refresh()
-	}
-	canvas.Refresh(r.bar)
-}
-
-func (r *verdictBarRenderer) Layout(size fyne.Size) {
-	v, m := r.bar, r.bar.Metrics
-	r.ground.Resize(size)
-	r.edge.Move(fyne.NewPos(0, size.Height-lineThin))
-	r.edge.Resize(fyne.NewSize(size.Width, lineThin))
-
+func (v *VerdictBar) paint(size fyne.Size) []fyne.CanvasObject {
+	m := v.Metrics
 	v.badge.Side, v.word.TextSize = m.Badge, m.VerdictText
 	side, gap, first := px(m.Badge), m.Padding, size.Height
 	if m.Fold == drawerFold {
@@ -187,15 +157,20 @@ func (r *verdictBarRenderer) Layout(size fyne.Size) {
 	v.word.Move(fyne.NewPos(x, (first-v.word.lineHeight())/2))
 	v.word.Resize(fyne.NewSize(v.word.Width(), v.word.lineHeight()))
 	if m.Fold == drawerFold {
-		r.texts(gap, size.Width-gap, first, size.Height)
-		return
+		v.placeTexts(gap, size.Width-gap, first, size.Height)
+	} else {
+		v.placeTexts(x+v.word.Width()+gap, size.Width-m.Temperature-gap, 0, size.Height)
 	}
-	r.texts(x+v.word.Width()+gap, size.Width-m.Temperature-gap, 0, size.Height)
+	return []fyne.CanvasObject{
+		filled(fyne.Position{}, size, ColorPanel),
+		filled(fyne.NewPos(0, size.Height-lineThin), fyne.NewSize(size.Width, lineThin), ColorEdge),
+		v.badge, v.word, v.sentence, v.fault, v.unapplied, v.button,
+	}
 }
 
-// texts places sentence and button between two edges and two heights.
-func (r *verdictBarRenderer) texts(left, right, top, bottom float32) {
-	v, m := r.bar, r.bar.Metrics
+// placeTexts places sentence and button between two edges and two heights.
+func (v *VerdictBar) placeTexts(left, right, top, bottom float32) {
+	m := v.Metrics
 	if v.button.Visible() {
 		high := min(v.button.HeightFor(m.Advice), bottom-top-px(space8))
 		right -= m.Advice

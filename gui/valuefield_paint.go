@@ -70,65 +70,46 @@ func (f *ValueField) placeAt(x float32) int {
 // CreateRenderer implements [fyne.Widget].
 func (f *ValueField) CreateRenderer() fyne.WidgetRenderer {
 	f.ExtendBaseWidget(f)
-	r := &valueFieldRenderer{field: f}
-	r.Layout(f.Size())
-	return r
+	return newPainting(f)
 }
 
-type valueFieldRenderer struct {
-	field *ValueField
-	parts []fyne.CanvasObject
-}
-
-var _ fyne.WidgetRenderer = (*valueFieldRenderer)(nil)
-
-func (r *valueFieldRenderer) Destroy() {}
-
-func (r *valueFieldRenderer) Objects() []fyne.CanvasObject { return r.parts }
-
-// MinSize has room for six characters.
-func (r *valueFieldRenderer) MinSize() fyne.Size {
-	width := 6*r.field.runeWidth() + 2*px(fieldInset) + px(unitGap) + r.field.unitWidth()
+// least has room for six characters.
+func (f *ValueField) least() fyne.Size {
+	width := 6*f.runeWidth() + 2*px(fieldInset) + px(unitGap) + f.unitWidth()
 	return fyne.NewSize(width, px(rowHeight))
 }
 
-func (r *valueFieldRenderer) Refresh() {
-	r.Layout(r.field.Size())
-	canvas.Refresh(r.field)
-}
-
-func (r *valueFieldRenderer) Layout(size fyne.Size) {
-	f := r.field
+func (f *ValueField) paint(size fyne.Size) []fyne.CanvasObject {
 	edge, stroke := ColorEdge, float32(lineThin)
 	if f.focused && !f.Refused {
 		edge, stroke = ColorInk, lineFocus
 	}
-	r.parts = framed(fyne.Position{}, size, ColorField, stroke, edge)
-	r.selection(size)
-	r.text(size)
+	parts := framed(fyne.Position{}, size, ColorField, stroke, edge)
+	parts = append(parts, f.paintSelection(size)...)
+	parts = append(parts, f.paintText(size)...)
 	if f.Refused {
-		r.parts = append(r.parts, dashed(fyne.Position{}, size, lineFocus, 6, 4, ColorInk)...)
+		parts = append(parts, dashed(fyne.Position{}, size, lineFocus, 6, 4, ColorInk)...)
 	}
+	return parts
 }
 
-// selection draws what is selected, and the cursor.
-func (r *valueFieldRenderer) selection(size fyne.Size) {
-	f := r.field
+// paintSelection draws what is selected, and the cursor.
+func (f *ValueField) paintSelection(size fyne.Size) []fyne.CanvasObject {
 	if !f.focused {
-		return
+		return nil
 	}
+	var parts []fyne.CanvasObject
 	inset := px(7)
 	low, high := f.line.selection()
 	if low < high {
 		left, right := f.x(low), f.x(high)
-		r.parts = append(r.parts, filled(fyne.NewPos(left, inset), fyne.NewSize(right-left, size.Height-2*inset), selectionColor))
+		parts = append(parts, filled(fyne.NewPos(left, inset), fyne.NewSize(right-left, size.Height-2*inset), selectionColor))
 	}
-	r.parts = append(r.parts, filled(fyne.NewPos(f.x(f.line.cursor)-lineNormal/2, inset), fyne.NewSize(lineNormal, size.Height-2*inset), ColorInk))
+	return append(parts, filled(fyne.NewPos(f.x(f.line.cursor)-lineNormal/2, inset), fyne.NewSize(lineNormal, size.Height-2*inset), ColorInk))
 }
 
-// text draws the number and the unit on one baseline.
-func (r *valueFieldRenderer) text(size fyne.Size) {
-	f := r.field
+// paintText draws the number and the unit on one baseline.
+func (f *ValueField) paintText(size fyne.Size) []fyne.CanvasObject {
 	ink := ColorInk
 	if f.Inherited && !f.Edited() {
 		ink = ColorSoftInk
@@ -140,13 +121,12 @@ func (r *valueFieldRenderer) text(size fyne.Size) {
 	top := (size.Height - box.Height) / 2
 	number.Resize(box)
 	number.Move(fyne.NewPos(f.x(low), top))
-	r.parts = append(r.parts, number)
 	if f.hasOwnUnit() {
-		return
+		return []fyne.CanvasObject{number}
 	}
 	unit := f.unitText()
 	unit.Resize(unit.MinSize())
 	_, drop := measure(f.Unit, px(textAxis), unit.style(f.Unit))
 	unit.Move(fyne.NewPos(size.Width-px(fieldInset)-f.unitWidth(), top+baseline-drop))
-	r.parts = append(r.parts, unit)
+	return []fyne.CanvasObject{number, unit}
 }
