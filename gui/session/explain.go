@@ -49,6 +49,8 @@ var quantities = map[string]quantity{
 	"gap_hz":                     {"smallest gap: E₁ − E₀ at q = 1", reviewSource, depthAndRecoil},
 	"recoil_hz":                  {"Er/h = h / (8 m d²)", "", func(s *report.Stage) string { return "d = " + listed(s.SpacingNM, "nm") }},
 	"tilt_hz":                    {"F = (m g − μ B′) d / h, per site", "", func(s *report.Stage) string { return "d = " + listed(s.SpacingNM, "nm") }},
+	"sag":                        {"m ω² z = m g − μ B′ at the minimum of the beams' potential along gravity, the lattice left out", derivedSource, trapAndSpacing},
+	"mirror":                     {"J₂/J₁ and −E₀″(1)/E₀″(0): 0 and 1 where −H is the mirror of H with −U, −V", derivedSource, depthAndRecoil},
 	"tunnelling_time_ms":         {"ħ / J of the fastest axis", "", func(s *report.Stage) string { return "J = " + listed(s.TunnellingHz, "Hz") }},
 	"depth_er":                   {"s = 4 √ρ |U₀| / Er, peak to peak at the centre", "", func(s *report.Stage) string { return "Er = " + listed(s.RecoilHz, "Hz") }},
 
