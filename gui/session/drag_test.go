@@ -84,7 +84,7 @@ func TestUpdatesAreFew(t *testing.T) {
 	begin := time.Now()
 	last := 0.0
 	for i := 0; time.Since(begin) < 500*time.Millisecond; i++ {
-		last = 20 + float64(i%250)*0.1
+		last = float64(200+i%250) / 10
 		s.Drag(last)
 		time.Sleep(time.Millisecond)
 	}
