@@ -3,6 +3,7 @@ package quadrature
 import (
 	"errors"
 	"fmt"
+	"math"
 
 	"gonum.org/v1/gonum/lapack"
 	"gonum.org/v1/gonum/lapack/gonum"
@@ -61,6 +62,32 @@ func (t *Tridiagonal) Rule(m int) (Rule, error) {
 		r.Weight[k] = r.vectors[k] * r.vectors[k]
 	}
 	return r, nil
+}
+
+// Residual returns |A x - Node[k] x| of the unit vector x = sum_j v_j vectors[j,k]
+// of a rule of this matrix: an eigenvalue lies within it. It is 0 if the run ended.
+//
+// It panics if k is not a node.
+//
+// Source: Parlett, The Symmetric Eigenvalue Problem (1980), from memory.
+func (t *Tridiagonal) Residual(r *Rule, k int) float64 {
+	m := len(r.Node)
+	if m > len(t.Coupling) {
+		return 0
+	}
+	return t.Coupling[m-1] * math.Abs(r.vectors[(m-1)*m+k])
+}
+
+// VectorTo writes the components of the unit vector of node k on the Lanczos
+// vectors to dst. It panics if dst has not the length of the rule.
+func (r *Rule) VectorTo(dst []float64, k int) {
+	m := len(r.Node)
+	if len(dst) != m {
+		panic(fmt.Sprintf("quadrature: %d components, want %d", len(dst), m))
+	}
+	for j := range dst {
+		dst[j] = r.vectors[j*m+k]
+	}
 }
 
 // CoefficientsTo writes <v_j|f(A)|v> of the Lanczos vectors j to dst, of length m,
