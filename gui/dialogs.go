@@ -27,8 +27,11 @@ func (w *Window) ask(title, text string, answers ...answer) {
 func (w *Window) tell(title, text string) { w.dialog(title, text, []answer{{"Close", nothing}}) }
 
 func (w *Window) dialog(title, text string, answers []answer) {
-	prose := NewProse(text, textBody, 0)
-	d := dialog.NewCustomWithoutButtons(title, NewScroller(NewColumn(space8, space8, prose)), w.window)
+	column := NewColumn(space8, space8)
+	for _, paragraph := range strings.Split(text, "\n") {
+		column.Objects = append(column.Objects, NewProse(paragraph, textBody, 0))
+	}
+	d := dialog.NewCustomWithoutButtons(title, NewScroller(column), w.window)
 	var buttons []fyne.CanvasObject
 	for _, a := range answers {
 		button := NewButton(a.label, func() {
@@ -46,7 +49,7 @@ func (w *Window) dialog(title, text string, answers []answer) {
 	d.SetButtons(buttons)
 	room := w.window.Canvas().Size()
 	width := min(px(560), room.Width*0.9)
-	height := d.MinSize().Height + prose.HeightFor(width-px(2*space24)) + px(space24)
+	height := d.MinSize().Height + column.HeightFor(width-px(2*space16)) + px(space8)
 	d.Resize(fyne.NewSize(width, min(height, room.Height*0.9)))
 	d.Show()
 	if focus, ok := buttons[0].(fyne.Focusable); ok {

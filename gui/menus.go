@@ -4,7 +4,6 @@ import (
 	"path/filepath"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/driver/desktop"
 
 	"hilltop/gui/session"
 )
@@ -23,22 +22,6 @@ type menuWords struct {
 	undo, redo string
 	advice     bool
 	recent     string
-}
-
-const ctrl = fyne.KeyModifierShortcutDefault
-
-// item is a menu item with its shortcut.
-func item(label string, key fyne.KeyName, modifier fyne.KeyModifier, action func()) *fyne.MenuItem {
-	i := fyne.NewMenuItem(label, action)
-	i.Shortcut = &desktop.CustomShortcut{KeyName: key, Modifier: modifier}
-	return i
-}
-
-// shortcut is a menu item with one of the toolkit's own shortcuts.
-func shortcut(label string, s fyne.Shortcut, action func()) *fyne.MenuItem {
-	i := fyne.NewMenuItem(label, action)
-	i.Shortcut = s
-	return i
 }
 
 // buildMenu makes the menu bar. Every action of the window has an item, so that a
@@ -149,8 +132,8 @@ func (w *Window) refreshMenu() {
 		return
 	}
 	w.menu.shown = &words
-	name(w.menu.undo, "Undo", s.Undo)
-	name(w.menu.redo, "Redo", s.Redo)
+	nameEdit(w.menu.undo, "Undo", s.Undo, &fyne.ShortcutUndo{})
+	nameEdit(w.menu.redo, "Redo", s.Redo, &fyne.ShortcutRedo{})
 	w.menu.apply.Disabled = !words.advice
 	var items []*fyne.MenuItem
 	for i, path := range s.Recent {
@@ -161,13 +144,13 @@ func (w *Window) refreshMenu() {
 	w.menu.bar.Refresh()
 }
 
-// name makes an item name an edit, or disables it where there is none.
-func name(i *fyne.MenuItem, verb, edit string) {
+// nameEdit makes an item name an edit, or disables it where there is none.
+func nameEdit(i *fyne.MenuItem, verb, edit string, keys fyne.KeyboardShortcut) {
 	i.Disabled = edit == ""
-	i.Label = verb
 	if edit != "" {
-		i.Label = verb + ": " + edit
+		verb += ": " + edit
 	}
+	i.Label = withKeys(verb, keys)
 }
 
 func (w *Window) undo() {

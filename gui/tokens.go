@@ -54,7 +54,6 @@ var aliases = map[fyne.ThemeColorName]fyne.ThemeColorName{
 	theme.ColorNameDisabled:                  ColorSoftInk,
 	theme.ColorNameDisabledButton:            ColorPanel,
 	theme.ColorNameError:                     ColorInk,
-	theme.ColorNameFocus:                     ColorEdge,
 	theme.ColorNameForeground:                ColorInk,
 	theme.ColorNameForegroundOnError:         ColorPaper,
 	theme.ColorNameForegroundOnPrimary:       ColorPaper,
@@ -83,6 +82,7 @@ var washes = map[fyne.ThemeColorName]pair{
 	theme.ColorNameHover:     {rgb(0xDDDCD5), rgb(0x2A313A)},
 	theme.ColorNamePressed:   {rgb(0xCFCEC6), rgb(0x343D48)},
 	theme.ColorNameSelection: {rgb(0xC9D3DE), rgb(0x2E4257)},
+	theme.ColorNameFocus:     {rgb(0xC9D3DE), rgb(0x2E4257)},
 }
 
 // hoverColor lies under what is pointed at.

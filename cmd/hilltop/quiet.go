@@ -16,6 +16,8 @@ type quiet struct {
 var noise = [][]byte{
 	// No desktop session runs: the window follows its settings from the next start.
 	[]byte("Fyne error:  failed to watch theme settings"),
+	// A desktop has no folder for videos, which the file dialog would have offered.
+	[]byte("Fyne error:  Getting favorite locations"),
 	// The toolkit reads its own preferences while it writes them. Nothing of ours
 	// stands there.
 	[]byte("Fyne error:  Preferences load error"),
