@@ -6,6 +6,7 @@ import (
 	"runtime"
 	"sync/atomic"
 	"testing"
+	"time"
 )
 
 // Every block is done once, by a worker in range, for any numbers of both.
@@ -68,6 +69,10 @@ func TestRunLeavesNoGoroutine(t *testing.T) {
 		if err := Run(context.Background(), 8, 16, func(_, _ int) {}); err != nil {
 			t.Fatal(err)
 		}
+	}
+	// A goroutine that has said it is done may take a moment to end.
+	for deadline := time.Now().Add(2 * time.Second); runtime.NumGoroutine() > before && time.Now().Before(deadline); {
+		time.Sleep(time.Millisecond)
 	}
 	if after := runtime.NumGoroutine(); after > before {
 		t.Errorf("%d goroutines, %d before", after, before)
