@@ -28,6 +28,7 @@ func (e *ToleranceError) Error() string {
 // Options of New. The zero value works.
 type Options struct {
 	Dimension int // largest dimension of the Krylov space, at least 2; 0: DefaultDimension
+	Least     int // dimension that a space has at least unless it is closed; 0: 1
 	Workers   int // goroutines that share the vector sums; below 1: what the machine runs at once
 }
 
@@ -35,6 +36,7 @@ type Options struct {
 // Dimension + 1 complex vectors and is for one caller at a time. Every number of
 // workers gives the same bits.
 type Propagator struct {
+	least int
 	most  int
 	space *space
 	march *march
@@ -61,7 +63,7 @@ func New(n int, opt Options) *Propagator {
 		panic(fmt.Sprintf("krylov: %d components in a space of dimension %d, want at least 1 and 2", n, opt.Dimension))
 	}
 	return &Propagator{
-		most: opt.Dimension, space: newSpace(n, opt.Dimension+1, opt.Workers),
+		least: min(opt.Least, opt.Dimension), most: opt.Dimension, space: newSpace(n, opt.Dimension+1, opt.Workers),
 		march: newMarch(opt.Dimension + 1), watch: newWatch(n, opt.Dimension),
 		alpha: make([]float64, 0, opt.Dimension), beta: make([]float64, 0, opt.Dimension),
 	}
@@ -106,7 +108,8 @@ func (p *Propagator) Build(ctx context.Context, psi Vector, tau, tolerance float
 			return 0, 0, err
 		}
 		m := p.Dimension()
-		if m < check && m < p.most && p.beta[m-1]*time > tolerance/4 && !closed {
+		early := m < check && p.beta[m-1]*time > tolerance/4 || m < p.least
+		if early && m < p.most && !closed {
 			continue
 		}
 		if reach, bound, err = p.assess(time, tolerance); err != nil {
@@ -252,18 +255,17 @@ func (p *Propagator) AdvanceTo(ctx context.Context, dst Vector, tau float64) (no
 // It returns ctx.Err() if stopped. It panics if the space has too few dimensions.
 func (p *Propagator) PowerTo(ctx context.Context, dst Vector, power int) error {
 	t, last := p.projected()
-	if power < 0 || power >= p.Dimension() && last != 0 {
-		panic(fmt.Sprintf("krylov: power %d in a space of dimension %d", power, p.Dimension()))
-	}
-	m := p.march
 	n := p.Dimension()
-	m.start(n)
-	m.re[0] = p.size
-	t.centre = 0
-	for range power {
-		t.applyTo(m.termRe[:n], m.re[:n], 1)
-		copy(m.re, m.termRe[:n])
+	if power < 0 || power >= n && last != 0 {
+		panic(fmt.Sprintf("krylov: power %d in a space of dimension %d", power, n))
 	}
-	_, err := p.space.combine(ctx, dst, m.re[:n], m.im[:n])
-	return err
+	t.centre = 0
+	c, next := p.march.re[:n], p.march.termRe[:n]
+	clear(c)
+	c[0] = p.size
+	for range power {
+		t.applyTo(next, c, 1)
+		c, next = next, c
+	}
+	return p.space.sum(ctx, dst, c[:min(power+1, n)]) // the others are 0
 }

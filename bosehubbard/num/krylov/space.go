@@ -21,7 +21,8 @@ type operation int
 const (
 	opNorm    operation = iota // partial = |x|^2
 	opRecur                    // w = a w + b v + c u, partial = |w|^2
-	opCombine                  // x = sum of coefficients times vectors, partial = |x|^2
+	opCombine                  // w = sum of complex coefficients times vectors, partial = |w|^2
+	opSum                      // w = sum of the coefficients' real parts times vectors
 	opInner                    // partial, partialIm = <v|w>
 	opRemove                   // w -= (cr + i ci) v, partial = |w|^2
 )
@@ -75,6 +76,8 @@ func (s *space) block(_, number int) {
 	case opCombine:
 		s.combineBlock(w, lo, hi)
 		s.partial[number] = sumSquares(w.Re) + sumSquares(w.Im)
+	case opSum:
+		s.sumBlock(w, lo, hi)
 	case opInner:
 		v := s.v.slice(lo, hi)
 		s.partial[number] = dot(v.Re, w.Re) + dot(v.Im, w.Im)
@@ -89,17 +92,35 @@ func (s *space) block(_, number int) {
 	}
 }
 
-// combineBlock sums the vectors in pairs.
-func (s *space) combineBlock(x Vector, lo, hi int) {
-	clear(x.Re)
-	clear(x.Im)
+// combineBlock sums the vectors in pairs, which halves the traffic with the sum.
+func (s *space) combineBlock(w Vector, lo, hi int) {
+	clear(w.Re)
+	clear(w.Im)
 	for k := 0; k < len(s.coefficients); k += 2 {
-		first, second, c := s.vectors[k].slice(lo, hi), s.vectors[k].slice(lo, hi), complex128(0)
-		if k+1 < len(s.coefficients) {
-			second, c = s.vectors[k+1].slice(lo, hi), s.coefficients[k+1]
-		}
-		rotate(x.Re, x.Im, first, second, s.coefficients[k], c)
+		first, second, c := s.pair(k, lo, hi)
+		rotate(w.Re, w.Im, first, second, s.coefficients[k], c)
 	}
+}
+
+// sumBlock is combineBlock for real coefficients.
+func (s *space) sumBlock(w Vector, lo, hi int) {
+	clear(w.Re)
+	clear(w.Im)
+	for k := 0; k < len(s.coefficients); k += 2 {
+		first, second, c := s.pair(k, lo, hi)
+		stretch(w.Re, first.Re, second.Re, real(s.coefficients[k]), real(c))
+		stretch(w.Im, first.Im, second.Im, real(s.coefficients[k]), real(c))
+	}
+}
+
+// pair returns a block of the vectors k and k+1, and the coefficient of the latter:
+// 0 if there is none.
+func (s *space) pair(k, lo, hi int) (first, second Vector, c complex128) {
+	first = s.vectors[k].slice(lo, hi)
+	if k+1 == len(s.coefficients) {
+		return first, first, 0
+	}
+	return first, s.vectors[k+1].slice(lo, hi), s.coefficients[k+1]
 }
 
 func (v Vector) slice(lo, hi int) Vector { return Vector{Re: v.Re[lo:hi], Im: v.Im[lo:hi]} }
@@ -146,6 +167,17 @@ func (s *space) combine(ctx context.Context, dst Vector, re, im []float64) (floa
 	s.w = dst
 	squared, err := s.pass(ctx, opCombine)
 	return math.Sqrt(squared), err
+}
+
+// sum sets dst to the sum of the first normalised vectors with real coefficients.
+func (s *space) sum(ctx context.Context, dst Vector, coefficients []float64) error {
+	s.coefficients = s.coefficients[:len(coefficients)]
+	for k, c := range coefficients {
+		s.coefficients[k] = complex(c/s.norms[k], 0)
+	}
+	s.w = dst
+	_, err := s.pass(ctx, opSum)
+	return err
 }
 
 // remove takes what vector j+1 has along the vectors 0 to j out of it and returns

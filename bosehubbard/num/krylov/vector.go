@@ -103,3 +103,11 @@ func rotate(re, im []float64, v0, v1 Vector, c0, c1 complex128) {
 		im[j] += (b0*x0 + a0*y0) + (b1*x1 + a1*y1)
 	}
 }
+
+// stretch adds real multiples of two vectors: y += a0 x0 + a1 x1.
+func stretch(y, x0, x1 []float64, a0, a1 float64) {
+	x0, x1 = x0[:len(y)], x1[:len(y)]
+	for j := range y {
+		y[j] += a0*x0[j] + a1*x1[j]
+	}
+}

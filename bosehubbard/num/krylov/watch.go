@@ -27,7 +27,12 @@ func (w *watch) start() { w.now[0] = 1 }
 // step moves on to vector j+1 and returns the largest |omega_(j+1)k|, k <= j.
 func (w *watch) step(alpha, beta []float64) float64 {
 	j := len(alpha) - 1
-	most := w.floor
+	// The product rounds to some units of its size, of which beta_j is what is left.
+	size := math.Abs(alpha[j]) + beta[j]
+	if j > 0 {
+		size += beta[j-1]
+	}
+	most := w.floor * size / beta[j]
 	for k := range j {
 		sum := beta[k]*w.now[k+1] + (alpha[k]-alpha[j])*w.now[k]
 		if k > 0 {
@@ -38,7 +43,7 @@ func (w *watch) step(alpha, beta []float64) float64 {
 		w.next[k] = sum / beta[j]
 		most = max(most, math.Abs(w.next[k]))
 	}
-	w.next[j], w.next[j+1] = w.floor, 1
+	w.next[j], w.next[j+1] = w.floor*size/beta[j], 1
 	w.before, w.now, w.next = w.now, w.next, w.before
 	return most
 }

@@ -1,0 +1,202 @@
+package exact
+
+import (
+	"context"
+	"fmt"
+	"math"
+
+	"hilltop/bosehubbard/num/krylov"
+)
+
+type vector = krylov.Vector
+
+// A step of length h from the time t is the product of two exponentials,
+//
+//	exp(-i pi h X2) exp(-i pi h X1),   X1 = 2 (a1 H1 + a2 H2),   X2 = 2 (a2 H1 + a1 H2),
+//	a = 1/4 +- sqrt(3)/6,   H1, H2 at t + (1/2 -+ sqrt(3)/6) h,
+//
+// of fourth order and exactly unitary.
+//
+// Source: Blanes and Moan, Appl. Numer. Math. 56, 1519 (2006), from memory; the
+// order is tested.
+var (
+	gauss  = math.Sqrt(3) / 6
+	weight = [2]float64{0.25 + gauss, 0.25 - gauss}
+)
+
+// stepper holds the couplings of a step and the scratch of its estimate.
+type stepper struct {
+	nodes  [2]couplings // at the Gauss points
+	first  couplings    // X1
+	second couplings    // X2
+	estimate
+}
+
+func newStepper(couplingCount, length int) stepper {
+	make := func() couplings { return make(couplings, couplingCount) }
+	return stepper{
+		nodes: [2]couplings{make(), make()}, first: make(), second: make(),
+		estimate: newEstimate(make, length),
+	}
+}
+
+// most and least factors of one change of pace, and the share of the allowed
+// error that is aimed at, as a factor of the step.
+const (
+	leastChange = 0.02
+	mostChange  = 3
+	cautious    = 0.9
+)
+
+// ramp takes steps from one time of the segment to another.
+func (r *run) ramp(ctx context.Context, from, to float64) error {
+	for at := from; at < to; {
+		left := to - at
+		steps := math.Max(1, math.Ceil(left/r.pace*(1-1e-9)))
+		h := left / steps
+		if h < 1e-13*r.Duration {
+			return fmt.Errorf("steps of %g s at %g s: the drive is not smooth, or the tolerance of %g too small", h, at, r.Tolerance)
+		}
+		taken, err := r.step(ctx, at, h)
+		if err != nil {
+			return err
+		}
+		if !taken {
+			r.count.rejected++
+			continue
+		}
+		r.count.steps++
+		if at += h; steps == 1 {
+			at = to
+		}
+		r.time = r.begin + at
+		r.report(at)
+	}
+	return nil
+}
+
+// step tries one step and sets the pace of the next. It leaves psi alone if the
+// estimated error is too large.
+func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
+	s := &r.tools
+	if err := r.prepare(at, h); err != nil {
+		return false, err
+	}
+	allowed := r.Tolerance * h / r.Duration
+	if !s.proportional() {
+		return r.doubled(ctx, at, h, allowed)
+	}
+	if err := r.hamiltonian.tune(ctx, s.first); err != nil {
+		return false, err
+	}
+	tau, tolerance := math.Pi*h, krylovShare*allowed/2
+	reach, bound, err := r.propagator.Build(ctx, r.psi, tau, tolerance, r.hamiltonian.product)
+	if err != nil {
+		return false, err
+	}
+	ordering, err := r.commutators(ctx, h)
+	if err != nil {
+		return false, err
+	}
+	if r.setPace(h, ordering, allowed); ordering > allowed {
+		return false, nil
+	}
+	if _, err := r.propagator.AdvanceTo(ctx, r.psi, reach); err != nil {
+		return false, err
+	}
+	r.budget.Krylov += bound
+	r.budget.Ordering += ordering
+	if reach < tau {
+		if err := r.exponential(ctx, tau-reach, tolerance*(1-reach/tau)); err != nil {
+			return false, err
+		}
+	}
+	if err := r.hamiltonian.tune(ctx, s.second); err != nil {
+		return false, err
+	}
+	return true, r.exponential(ctx, tau, tolerance)
+}
+
+// exponential applies exp(-i tau H) of the couplings set last to the state.
+func (r *run) exponential(ctx context.Context, tau, tolerance float64) error {
+	report, err := r.propagator.Exp(ctx, r.psi, tau, tolerance, r.hamiltonian.product)
+	r.budget.Krylov += report.Bound
+	return err
+}
+
+// setPace chooses the length of the next step: the error of one goes as h^5.
+func (r *run) setPace(h, ordering, allowed float64) {
+	change := mostChange + 0.0
+	if ordering > 0 {
+		change = cautious * math.Pow(allowed/ordering, 0.25)
+	}
+	r.pace = h * min(max(change, leastChange), mostChange)
+}
+
+// prepare reads the drive at the Gauss points, and around the middle for the
+// estimate.
+func (r *run) prepare(at, h float64) error {
+	s := &r.tools
+	for k, sign := range [2]float64{-1, 1} {
+		if err := r.couplingsAt(s.nodes[k], at+h*(0.5+sign*gauss)); err != nil {
+			return err
+		}
+	}
+	s.first.combine([]float64{2 * weight[0], 2 * weight[1]}, s.nodes[:])
+	s.second.combine([]float64{2 * weight[1], 2 * weight[0]}, s.nodes[:])
+	for k := range s.samples {
+		if err := r.couplingsAt(s.samples[k], at+h*float64(k)/4); err != nil {
+			return err
+		}
+	}
+	s.expand()
+	return nil
+}
+
+// plain takes a step without an estimate.
+func (r *run) plain(ctx context.Context, at, h, tolerance float64) error {
+	if err := r.prepare(at, h); err != nil {
+		return err
+	}
+	for _, c := range []couplings{r.tools.first, r.tools.second} {
+		if err := r.hamiltonian.tune(ctx, c); err != nil {
+			return err
+		}
+		if err := r.exponential(ctx, math.Pi*h, tolerance/2); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// doubled takes two steps of half the length and estimates their error by the
+// distance from a whole one, a sixteenth of whose error theirs is.
+func (r *run) doubled(ctx context.Context, at, h, allowed float64) (taken bool, err error) {
+	start, whole, before := r.scratch[1], r.scratch[2], r.budget
+	start.CopyFrom(r.psi)
+	tolerance := krylovShare * allowed
+	if err := r.plain(ctx, at, h, tolerance/4); err != nil {
+		return false, err
+	}
+	whole.CopyFrom(r.psi)
+	r.psi.CopyFrom(start)
+	r.budget = before
+	for k := range 2 {
+		if err := r.plain(ctx, at+h/2*float64(k), h/2, tolerance/2); err != nil {
+			return false, err
+		}
+	}
+	squared := 0.0
+	for i := range whole.Re {
+		re, im := r.psi.Re[i]-whole.Re[i], r.psi.Im[i]-whole.Im[i]
+		squared += re*re + im*im
+	}
+	ordering := math.Sqrt(squared) / 15
+	if r.setPace(h, ordering, allowed); ordering > allowed {
+		r.psi.CopyFrom(start)
+		r.budget = before
+		return false, nil
+	}
+	r.budget.Ordering += ordering
+	return true, nil
+}
