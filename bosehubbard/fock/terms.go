@@ -59,6 +59,20 @@ func TermsOf(l *lattice.Lattice, m bosehubbard.Model) (*Terms, error) {
 	return t, nil
 }
 
+// AddTunnelling adds -J of its axis for every bond in a list, such as the second
+// neighbours of lattice.SecondBonds with J2 of each axis in Hz.
+//
+// It returns an error if a bond has an axis without a value.
+func (t *Terms) AddTunnelling(bonds []lattice.Bond, tunnelling []float64) error {
+	for _, b := range bonds {
+		if b.Axis < 0 || b.Axis >= len(tunnelling) {
+			return fmt.Errorf("fock: bond along axis %d, want one of the %d with a tunnelling", b.Axis, len(tunnelling))
+		}
+		t.Hops = append(t.Hops, Hop{From: b.From, To: b.To, Amplitude: -tunnelling[b.Axis]})
+	}
+	return nil
+}
+
 // check refuses what is no Hamiltonian of that many atoms, and energies that are
 // not finite or could overflow in a sum.
 func (t *Terms) check(atoms int) error {

@@ -10,12 +10,13 @@ const MaxSites = 1_000_000
 // different sites in [0, Sites) and stands in the list once.
 type Lattice struct {
 	Sites     int
-	Axes      int // number of axes, 1 to 3
+	Axes      int // number of directions of bonds, each with its own tunnelling, 1 to 3
 	Bonds     []Bond
 	Positions [][3]float64 // in sites about the centre, length Sites; 0 on axes that do not exist
 }
 
-// Bond joins two sites along one axis, 0 for x, 1 for y, 2 for z.
+// Bond joins two sites along one axis: of a box 0 for x, 1 for y, 2 for z, of other
+// kinds one of the directions of its bonds.
 type Bond struct{ From, To, Axis int }
 
 // Box builds the chain, rectangle or cuboid with sites[a] sites along axis a,
