@@ -18,14 +18,14 @@ const (
 	margin        = 0.005 // of the width: a percent of the half width
 	roughResidual = 2e-3
 	firstSteps    = 40
-	mostSteps     = 640
+	mostSteps     = 160 // more would take long to diagonalise
 )
 
 // ends finds both ends of the spectrum roughly, to some 1e-5 of its width, by runs
 // that double until they are good enough.
 func (s *space) ends(ctx context.Context, seed uint64) (floor, ceiling float64, err error) {
 	low, high, errs := make([]float64, len(s.sectors)), make([]float64, len(s.sectors)), make([]error, len(s.sectors))
-	err = blocks.Run(ctx, s.lanes, len(s.sectors), func(lane, i int) {
+	err = blocks.Run(ctx, s.lanes(), len(s.sectors), func(lane, i int) {
 		low[i], high[i], errs[i] = s.sectorEnds(ctx, i, lane, seed)
 	})
 	return slices.Min(low), slices.Max(high), errors.Join(append(errs, err)...)
@@ -34,7 +34,7 @@ func (s *space) ends(ctx context.Context, seed uint64) (floor, ceiling float64, 
 // sectorEnds finds both ends of sector i in a lane.
 func (s *space) sectorEnds(ctx context.Context, i, lane int, seed uint64) (low, high float64, err error) {
 	run := make([]quadrature.Tridiagonal, 1)
-	v := s.part(s.scratch[2*lane:2*lane+2], i)
+	v := s.vectors(i, lane)
 	for steps := firstSteps; ; steps *= 2 {
 		s.sectors[i].RandomTo(v[0], seed, stream(endStream, i, 0))
 		r := quadrature.Recurrence{Product: s.product(ctx, i, lane), Steps: steps}
@@ -56,8 +56,10 @@ func (s *space) sectorEnds(ctx context.Context, i, lane int, seed uint64) (low, 
 
 // Streams of random numbers for what needs its own.
 const (
-	traceStream = iota // vectors of a stochastic trace
-	endStream          // start of a search for the ends
+	traceStream   = iota // vectors of a stochastic trace
+	endStream            // start of a search for the ends
+	edgeStream           // start of a search for levels at the ends
+	thermalStream        // vectors of canonical averages
 )
 
 // stream numbers the random vectors: use, sector and count.

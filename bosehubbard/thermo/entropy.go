@@ -31,7 +31,6 @@ type Options struct {
 }
 
 const (
-	fullLimit     = 500    // states up to which Entropy diagonalises in full: some 40 ms
 	completeLimit = 2000   // states up to which its trace runs over all of them: under a second
 	steadyStates  = 60_000 // states times vectors/8 that keep the error of S below 0.1
 
@@ -83,8 +82,8 @@ func (o Options) withDefaults(dimension int) Options {
 
 // Entropy computes the density of states, S(E) and beta(E) of a system.
 //
-// Up to 500 states the spectrum is diagonalised in full, and up to 2000 the trace
-// runs over all states: the only error is the broadening. Beyond, and wherever
+// Up to 500 states of each sector of a mirror the spectrum is diagonalised in full,
+// and up to 2000 in all the trace runs over all states: the only error is the broadening. Beyond, and wherever
 // opt.Vectors says so, the kernel polynomial method runs on random vectors, whose
 // error the curve states. Cost: Moments/2 products with the Hamiltonian for each
 // vector, and 2 vectors as long as the space for each goroutine, or for all if there
@@ -108,8 +107,8 @@ func Entropy(ctx context.Context, s System, opt Options) (*Curve, error) {
 	}
 	built := time.Now()
 	var c *Curve
-	if opt.Vectors == 0 && sp.dimension <= fullLimit {
-		c, err = s.fullCurve(ctx, opt.withDefaults(sp.dimension))
+	if opt.Vectors == 0 && sp.largest() <= fullLimit {
+		c, err = fullCurve(ctx, sp, opt.withDefaults(sp.dimension))
 	} else {
 		c, err = s.momentCurve(ctx, sp, opt)
 	}
@@ -123,8 +122,8 @@ func Entropy(ctx context.Context, s System, opt Options) (*Curve, error) {
 }
 
 // fullCurve takes the moments of the levels.
-func (s System) fullCurve(ctx context.Context, opt Options) (*Curve, error) {
-	levels, err := s.levels(ctx, opt.MemoryBytes)
+func fullCurve(ctx context.Context, sp *space, opt Options) (*Curve, error) {
+	levels, err := sp.spectrum(ctx)
 	if err != nil {
 		return nil, err
 	}

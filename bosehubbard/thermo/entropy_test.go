@@ -236,8 +236,8 @@ func TestEntropyIsTheSameForAnyWorkers(t *testing.T) {
 	for {
 		sp, err := s.halves(context.Background(), resources{lanes: 4, vectors: 2, memory: little})
 		if err == nil {
-			if sp.lanes != 1 {
-				t.Errorf("%d lanes in %d bytes, want 1", sp.lanes, little)
+			if sp.lanes() != 1 {
+				t.Errorf("%d lanes in %d bytes, want 1", sp.lanes(), little)
 			}
 			break
 		}

@@ -41,7 +41,7 @@ func knownSystems(t testing.TB) []known {
 	all := []known{
 		{name: "free bosons on a chain", system: box(t, 8, 0, line, false, 8)},
 		{name: "free bosons on a tilted anti-trap", system: box(t, 8, 0, antitrap, false, 4, 2)},
-		{name: "one atom on a square", system: box(t, 1, 5, []bosehubbard.AxisTerms{{Tunnelling: 1}, {Tunnelling: 1}}, false, 50, 60)},
+		{name: "two free atoms on a torus", system: box(t, 2, 0, []bosehubbard.AxisTerms{{Tunnelling: 1}, {Tunnelling: 0.3}}, true, 8, 9)},
 		{name: "many atoms on two sites", system: box(t, 3000, -0.002, []bosehubbard.AxisTerms{{Tunnelling: 1, Tilt: 0.3}}, false, 2)},
 		{name: "attractive ladder", system: box(t, 5, -2.1, antitrap, false, 4, 2)},
 	}
@@ -49,31 +49,31 @@ func knownSystems(t testing.TB) []known {
 		all[i].levels = freeBosons(t, all[i].system)
 	}
 	all[3].levels = twoSites(t, all[3].system)
-	var err error
-	if all[4].levels, err = all[4].system.levels(context.Background(), 0); err != nil {
-		t.Fatal(err)
-	}
+	all[4].levels = allLevels(t, all[4].system)
 	for i := range all {
 		slices.Sort(all[i].levels)
 	}
 	return all
 }
 
+// allLevels diagonalises in full.
+func allLevels(t testing.TB, s System) []float64 {
+	t.Helper()
+	sp, err := s.whole(context.Background(), resources{lanes: 1, vectors: 2})
+	if err != nil {
+		t.Fatal(err)
+	}
+	levels, err := sp.spectrum(context.Background())
+	if err != nil {
+		t.Fatal(err)
+	}
+	return levels
+}
+
 // freeBosons adds up the energies of one atom in every way.
 func freeBosons(t testing.TB, s System) []float64 {
 	t.Helper()
-	one := s
-	one.Atoms = 1
 	n := s.Lattice.Sites
-	var single []float64
-	if s.Atoms == 1 { // a product of two chains: -2J cos(pi k/(L+1)) each
-		for k := 1; k <= 50; k++ {
-			for q := 1; q <= 60; q++ {
-				single = append(single, -2*math.Cos(math.Pi*float64(k)/51)-2*math.Cos(math.Pi*float64(q)/61))
-			}
-		}
-		return single
-	}
 	h := mat.NewSymDense(n, nil)
 	for i, p := range s.Lattice.Positions {
 		v := 0.0
@@ -89,7 +89,7 @@ func freeBosons(t testing.TB, s System) []float64 {
 	if !eig.Factorize(h, false) {
 		t.Fatal("one atom did not converge")
 	}
-	single = eig.Values(nil)
+	single := eig.Values(nil)
 	var levels []float64
 	var add func(from, atoms int, energy float64)
 	add = func(from, atoms int, energy float64) {

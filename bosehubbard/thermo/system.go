@@ -39,8 +39,9 @@ func (s System) Unit() float64 {
 
 // resources say what a computation may use.
 type resources struct {
-	lanes   int // goroutines that each have a vector of their own, if the memory allows
+	lanes   int // goroutines with vectors of their own, if the memory allows; below 1: what the machine runs
 	vectors int // for each of them
+	shared  int // vectors for all
 	memory  uint64
 }
 
@@ -51,9 +52,8 @@ type space struct {
 	dimension int
 	length    int // of the longest vector
 
-	lanes   int
 	works   [][]*fock.Workspace // by lane and sector
-	scratch [][]float64         // of each lane, one after the other
+	scratch [][][]float64       // by lane
 }
 
 // whole builds the space in one piece.
@@ -87,7 +87,7 @@ func (s System) fit(ctx context.Context, r resources, parities func(*fock.Terms)
 	wanted := blocks.Workers(r.lanes)
 	for lanes := wanted; ; lanes /= 2 {
 		sp, err := s.build(ctx, terms, parities(terms), fock.Options{
-			MemoryBytes: r.memory, Vectors: lanes * r.vectors, MaxOccupation: s.MaxOccupation,
+			MemoryBytes: r.memory, Vectors: lanes*r.vectors + r.shared, MaxOccupation: s.MaxOccupation,
 		})
 		var large *fock.TooLargeError
 		if errors.As(err, &large) && lanes > 1 {
@@ -120,9 +120,8 @@ func (s System) build(ctx context.Context, terms *fock.Terms, parities []int, op
 
 // open allocates the lanes, each with so many vectors and goroutines within.
 func (s *space) open(lanes, vectors, within int) {
-	s.lanes = lanes
-	s.scratch = newRows(lanes*vectors, s.length)
 	for range lanes {
+		s.scratch = append(s.scratch, newRows(vectors, s.length))
 		var works []*fock.Workspace
 		for _, h := range s.sectors {
 			works = append(works, h.NewWorkspace(within))
@@ -147,11 +146,14 @@ func (s *space) product(ctx context.Context, i, lane int) func(a, b, c float64, 
 	}
 }
 
-// part shortens vectors to the length of sector i.
-func (s *space) part(v [][]float64, i int) [][]float64 {
-	out := make([][]float64, len(v))
-	for k := range v {
-		out[k] = v[k][:s.sectors[i].Len()]
+// lanes returns the number of goroutines at once.
+func (s *space) lanes() int { return len(s.works) }
+
+// vectors returns the scratch of a lane, shortened to the vectors of sector i.
+func (s *space) vectors(i, lane int) [][]float64 {
+	out := make([][]float64, len(s.scratch[lane]))
+	for k, v := range s.scratch[lane] {
+		out[k] = v[:s.sectors[i].Len()]
 	}
 	return out
 }

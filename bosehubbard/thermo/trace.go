@@ -79,9 +79,9 @@ func (s *space) moments(ctx context.Context, opt Options, within chebyshev.Inter
 	var done atomic.Int64
 	ctx, stop := context.WithCancel(ctx)
 	defer stop()
-	err := blocks.Run(ctx, s.lanes, runs, func(lane, run int) {
+	err := blocks.Run(ctx, s.lanes(), runs, func(lane, run int) {
 		i, k := run/count, run%count
-		v := s.part(s.scratch[2*lane:2*lane+2], i)
+		v := s.vectors(i, lane)
 		fill(v[0], i, k)
 		r := chebyshev.Recurrence{Product: s.product(ctx, i, lane), Within: within}
 		r.After = func(int, int) {

@@ -23,8 +23,9 @@ type Recurrence struct {
 	Steps   int // of each run, at least 1
 	Workers int // goroutines for the work between products; below 2: none
 
-	// Project, if not nil, keeps the run in a subspace of A: it is called on each
-	// new vector, several at a time if Workers > 1.
+	// Project, if not nil, keeps the run in a subspace: it is called on the start and
+	// on every new vector, by several goroutines at a time if Workers > 1. What it
+	// takes away may be close to an invariant subspace of A but need not be one.
 	Project func(w []float64)
 
 	// Visit, if not nil, is called before each product with the unit Lanczos
