@@ -23,7 +23,12 @@ type Segment struct {
 	// Duration. It is smooth in between; it may start with a jump. nil holds what is.
 	Drive func(m *bosehubbard.Model, t float64)
 
-	Times []float64 // at which to take samples, in order, from 0 to Duration, s
+	Times []float64 // at which to take samples, rising, from 0 to Duration, s
+
+	// Every, if not 0, asks for more samples about so far apart, s, and one at the end.
+	// While H changes they fall on the ends of steps, which they shorten
+	// to twice Every at most.
+	Every float64
 
 	// Tolerance of the estimated errors of all steps together, ErrorBudget.Ordering;
 	// the exponentials take a tenth of it more. 0: DefaultTolerance.
@@ -44,20 +49,21 @@ func (s *Segment) check() error {
 	if !(s.Tolerance > 0 && s.Tolerance < 1) {
 		return fmt.Errorf("tolerance %g, want above 0 and below 1", s.Tolerance)
 	}
-	last := 0.0
-	for _, t := range s.Times {
-		if !(t >= last && t <= s.Duration) {
-			return fmt.Errorf("sample at %g s after one at %g s, want them in order up to %g s", t, last, s.Duration)
+	if !(s.Every >= 0) || math.IsInf(s.Every, 1) {
+		return fmt.Errorf("samples every %g s, want a finite time of at least 0", s.Every)
+	}
+	for i, t := range s.Times {
+		if !(t >= 0 && t <= s.Duration) || i > 0 && t <= s.Times[i-1] {
+			return fmt.Errorf("samples at %v s, want times that rise from 0 up to %g s", s.Times, s.Duration)
 		}
-		last = t
 	}
 	return nil
 }
 
-// Run carries the state through a segment and returns a sample for each of its
-// times. Cost: some 20 products with H for a step that is as long as the tolerance
-// allows; while nothing changes, about one product for the time 1/(2 width), width
-// in Hz that of the spectrum.
+// Run carries the state through a segment and returns its samples in order of
+// time. Cost: some 20 products with H for a step that is as long as the tolerance
+// allows; while nothing changes, about two products for the time 1/(width of the
+// spectrum in Hz).
 //
 // It returns ctx.Err() if stopped, within 50 ms, an error if the segment or a model
 // of its drive makes no sense, or a *krylov.ToleranceError. The state then stands
@@ -67,8 +73,11 @@ func (e *Evolution) Run(ctx context.Context, s Segment) ([]Sample, error) {
 		return nil, wrap(err)
 	}
 	r := &run{Evolution: e, Segment: &s, begin: e.time}
-	err := r.all(ctx)
-	if err != nil {
+	pass := r.drive
+	if s.Drive == nil {
+		pass = r.hold
+	}
+	if err := pass(ctx); err != nil {
 		return r.samples, wrap(err)
 	}
 	e.time = r.begin + s.Duration
@@ -81,16 +90,14 @@ type run struct {
 	*Segment
 	begin   float64 // s, of the evolution
 	samples []Sample
+	last    float64 // time of the last sample, s
 	model   bosehubbard.Model
 }
 
-func (r *run) all(ctx context.Context) error {
-	if r.Drive == nil {
-		return r.hold(ctx)
-	}
+// drive goes from one of the times to the next.
+func (r *run) drive(ctx context.Context) error {
 	r.model.Axes = make([]bosehubbard.AxisTerms, r.now.axes())
-	r.pace = min(r.pace, r.Duration)
-	if r.pace == 0 {
+	if r.pace = min(r.pace, r.Duration); r.pace == 0 {
 		r.pace = r.Duration / 8
 	}
 	at := 0.0
@@ -102,13 +109,19 @@ func (r *run) all(ctx context.Context) error {
 			return err
 		}
 		at, r.time = stop, r.begin+stop
-		if len(r.samples) < len(r.Times) {
+		if r.wanted(stop) {
 			if err := r.sample(ctx, r.psi, stop); err != nil {
 				return err
 			}
 		}
 	}
 	return nil
+}
+
+// wanted reports whether a sample is due at one of the times, or at the end.
+func (r *run) wanted(stop float64) bool {
+	taken := len(r.samples) > 0 && r.last == stop
+	return !taken && (slices.Contains(r.Times, stop) || r.Every > 0 && stop == r.Duration)
 }
 
 // couplingsAt reads the drive.
@@ -118,7 +131,7 @@ func (r *run) couplingsAt(c couplings, t float64) error {
 }
 
 func (r *run) report(t float64) {
-	if r.Progress != nil {
+	if r.Progress != nil && r.Duration > 0 {
 		const total = 1000
 		r.Progress(int(total*t/r.Duration), total)
 	}
@@ -132,47 +145,6 @@ func (r *run) sample(ctx context.Context, psi vector, t float64) error {
 	}
 	s.Time = r.begin + t
 	r.samples = append(r.samples, s)
+	r.last = t
 	return nil
-}
-
-// hold lets the state turn under a constant H. Samples come from the Krylov space
-// that carries the state past them.
-func (r *run) hold(ctx context.Context) error {
-	if err := r.hamiltonian.tune(ctx, r.now); err != nil {
-		return err
-	}
-	next := 0
-	for at := 0.0; ; {
-		left := r.Duration - at
-		tolerance := krylovShare * r.Tolerance
-		if left < r.Duration {
-			tolerance *= left / r.Duration
-		}
-		reach, bound, err := r.propagator.Build(ctx, r.psi, 2*math.Pi*left, tolerance, r.hamiltonian.product)
-		if err != nil {
-			return err
-		}
-		done := at + reach/(2*math.Pi)
-		if reach >= 2*math.Pi*left {
-			done = r.Duration
-		}
-		held := r.scratch[3]
-		for ; next < len(r.Times) && r.Times[next] <= done; next++ {
-			if _, err := r.propagator.AdvanceTo(ctx, held, 2*math.Pi*(r.Times[next]-at)); err != nil {
-				return err
-			}
-			if err := r.sample(ctx, held, r.Times[next]); err != nil {
-				return err
-			}
-		}
-		if _, err := r.propagator.AdvanceTo(ctx, r.psi, reach); err != nil {
-			return err
-		}
-		r.budget.Krylov += bound
-		at, r.time = done, r.begin+done
-		r.report(at)
-		if at >= r.Duration {
-			return nil
-		}
-	}
 }

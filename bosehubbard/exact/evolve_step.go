@@ -52,6 +52,9 @@ const (
 func (r *run) ramp(ctx context.Context, from, to float64) error {
 	for at := from; at < to; {
 		left := to - at
+		if r.Every > 0 {
+			r.pace = min(r.pace, 2*r.Every)
+		}
 		steps := math.Max(1, math.Ceil(left/r.pace*(1-1e-9)))
 		h := left / steps
 		if h < 1e-13*r.Duration {
@@ -71,6 +74,14 @@ func (r *run) ramp(ctx context.Context, from, to float64) error {
 		}
 		r.time = r.begin + at
 		r.report(at)
+		if r.Every > 0 && at < to && at-r.last >= r.Every*(1-1e-9) {
+			if err := r.couplingsAt(r.now, at); err != nil {
+				return err
+			}
+			if err := r.sample(ctx, r.psi, at); err != nil {
+				return err
+			}
+		}
 	}
 	return nil
 }

@@ -225,7 +225,7 @@ func TestHoldConservesNormAndEnergy(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	samples := e.must(t, Segment{Duration: 10, Tolerance: 1e-8, Times: []float64{0, 0, 1, 5, 10}})
+	samples := e.must(t, Segment{Duration: 10, Tolerance: 1e-8, Times: []float64{0, 1, 5, 10}})
 	for _, s := range samples {
 		if bound := e.Errors().Krylov; s.NormDefect > 2*bound || math.Abs(s.Energy-begin.Energy) > 100*bound {
 			t.Errorf("%g s: norm defect %.3g, energy %.12g of %.12g, bound %.3g", s.Time, s.NormDefect, s.Energy, begin.Energy, bound)
@@ -321,6 +321,39 @@ func TestErrorBudgetHolds(t *testing.T) {
 	}
 }
 
+// Every asks for samples on the way without a fixed grid: the same states, in order,
+// the last at the end, and none far from the one before.
+func TestSamplesOnTheWay(t *testing.T) {
+	l := box(t, []int{5})
+	from, to := uniform(1, 0.5, 6, 0), uniform(1, 1, 2, 0.1)
+	state := []int{1, 1, 1, 1, 1}
+	for _, drive := range []func(*bosehubbard.Model, float64){nil, path(from, to, 0.5, smooth)} {
+		for _, every := range []float64{0.004, 0.05, 0.7} {
+			e := evolution(t, l, from, state, EvolutionOptions{})
+			got := e.must(t, Segment{Duration: 0.5, Drive: drive, Every: every, Times: []float64{0.123, 0.5}, Tolerance: 1e-6})
+			last, seen := 0.0, 0
+			for i, s := range got {
+				if s.Time == 0.123 || s.Time == 0.5 {
+					seen++
+				}
+				if s.Time <= last && i > 0 || s.Time-last > 3*every {
+					t.Errorf("every %g s: a sample at %g s after one at %g s", every, s.Time, last)
+				}
+				last = s.Time
+			}
+			if seen != 2 || last != 0.5 {
+				t.Errorf("every %g s: %d of the two times asked for, the last at %g s", every, seen, last)
+			}
+			middle := got[len(got)/2]
+			again := evolution(t, l, from, state, EvolutionOptions{})
+			want := again.must(t, Segment{Duration: 0.5, Drive: drive, Times: []float64{middle.Time}, Tolerance: 1e-6})[0]
+			if math.Abs(want.Energy-middle.Energy) > 1e-5 || math.Abs(want.Kinetic-middle.Kinetic) > 1e-5 {
+				t.Errorf("every %g s: energies %.9g, %.9g at %g s, want %.9g, %.9g", every, middle.Energy, middle.Kinetic, middle.Time, want.Energy, want.Kinetic)
+			}
+		}
+	}
+}
+
 func TestEvolutionRefuses(t *testing.T) {
 	ctx := context.Background()
 	l := box(t, []int{3})
@@ -357,9 +390,9 @@ func TestEvolutionRefuses(t *testing.T) {
 	}{
 		{Segment{Duration: -1}, "duration -1"}, {Segment{Duration: math.NaN()}, "NaN"}, {Segment{Duration: math.Inf(1)}, "Inf"},
 		{Segment{Duration: 1, Tolerance: -1}, "tolerance -1"}, {Segment{Duration: 1, Tolerance: 1}, "tolerance 1"},
-		{Segment{Duration: 1, Times: []float64{0.5, 0.2}}, "0.2 s after"}, {Segment{Duration: 1, Times: []float64{2}}, "2 s after"},
+		{Segment{Duration: 1, Times: []float64{0.5, 0.2}}, "[0.5 0.2] s"}, {Segment{Duration: 1, Times: []float64{2}}, "up to 1 s"},
 		{Segment{Duration: 1, Drive: func(m *bosehubbard.Model, t float64) { m.Axes[0].Tunnelling = math.Sqrt(0.5 - t) }}, "NaN"},
-		{Segment{Duration: 1, Tolerance: 1e-15}, "tolerance"},
+		{Segment{Duration: 1, Tolerance: 1e-15}, "tolerance"}, {Segment{Duration: 1, Every: math.NaN()}, "every NaN"},
 	} {
 		if _, err := e.Run(ctx, tc.s); err == nil || !strings.Contains(err.Error(), tc.want) {
 			t.Errorf("%+v: %v, want an error with %q", tc.s, err, tc.want)
