@@ -81,4 +81,5 @@ def main():
         print("\t".join(cells + [str(len(values)), f"{values[0]:.14g}", f"{values[-1]:.14g}"]))
 
 
-main()
+if __name__ == "__main__":
+    main()

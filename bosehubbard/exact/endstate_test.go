@@ -5,7 +5,10 @@ import (
 	"math"
 	"testing"
 
+	"gonum.org/v1/gonum/mat"
+
 	"hilltop/bosehubbard"
+	"hilltop/bosehubbard/lattice"
 )
 
 // Sums, symmetry and shares of the energy, through both solvers.
@@ -80,4 +83,61 @@ func TestMirrorKeepsTheDensity(t *testing.T) {
 		near(t, fmt.Sprintf("<n^2> on site %d", i), ceiling.SquaredOccupation[i], floor.SquaredOccupation[i], 1e-8)
 	}
 	near(t, "kinetic", ceiling.Kinetic, -floor.Kinetic, 1e-8)
+}
+
+// A free atom on a ring of L sits in the quasi-momentum 0 at the floor and pi at
+// the ceiling; N of them fill it, and the sum over the zone is N.
+func TestMomentum(t *testing.T) {
+	s := chain(6, 4, true, 0, 0)
+	l, err := lattice.Box(s.sites, s.periodic)
+	if err != nil {
+		t.Fatal(err)
+	}
+	ends := s.solve(t, Options{EndStates: true})
+	for _, e := range []struct {
+		name  string
+		state *EndState
+		peak  int
+	}{{"floor", ends.FloorState, 0}, {"ceiling", ends.CeilingState, 3}} {
+		for m := range 6 {
+			want := 0.0
+			if m == e.peak {
+				want = 4
+			}
+			near(t, fmt.Sprintf("%s, atoms of quasi-momentum %d", e.name, m), e.state.Momentum(l, [3]float64{2 * math.Pi / 6 * float64(m)}), want, 1e-8)
+		}
+	}
+}
+
+// The correlations are those of the state: their trace is the number of atoms, on
+// the bonds they make the kinetic energy, and they are symmetric and positive.
+func TestCorrelations(t *testing.T) {
+	for _, s := range []system{
+		chain(6, 6, false, 4, 0.1), chain(7, 5, false, -2.1, -0.05), chain(5, 5, true, 4, 0),
+		{[]int{2, 3}, []bool{false, false}, 5, plane()},
+	} {
+		ends := s.solve(t, Options{EndStates: true})
+		terms := s.terms(t)
+		n := terms.Sites
+		for name, state := range map[string]*EndState{"floor": ends.FloorState, "ceiling": ends.CeilingState} {
+			trace, kinetic := 0.0, 0.0
+			for i := range n {
+				trace += state.Correlations[i*n+i]
+				for j := range n {
+					if a, b := state.Correlations[i*n+j], state.Correlations[j*n+i]; a != b {
+						t.Errorf("%v, %s: <b_%d^+ b_%d> = %g and %g the other way", s.sites, name, i, j, a, b)
+					}
+				}
+			}
+			for _, h := range terms.Hops {
+				kinetic += 2 * h.Amplitude * state.Correlations[h.From*n+h.To]
+			}
+			near(t, fmt.Sprintf("%v, %s: trace", s.sites, name), trace, float64(s.atoms), 1e-12*float64(s.atoms))
+			near(t, fmt.Sprintf("%v, %s: kinetic energy", s.sites, name), kinetic, state.Kinetic, 1e-9)
+			var eig mat.EigenSym
+			if !eig.Factorize(mat.NewSymDense(n, state.Correlations), false) || eig.Values(nil)[0] < -1e-12 {
+				t.Errorf("%v, %s: natural occupations %v, want none negative", s.sites, name, eig.Values(nil))
+			}
+		}
+	}
 }

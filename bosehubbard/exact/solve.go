@@ -93,6 +93,7 @@ type solver struct {
 	terms   *fock.Terms
 	atoms   int
 	opt     Options
+	sector  *fock.Operator // of the search before
 	scratch [2][]float64
 	ends    Ends
 	floor   found
@@ -133,8 +134,11 @@ func (s *solver) run() (Ends, error) {
 	return s.ends, nil
 }
 
-// build makes the operator of one sector.
+// build makes the operator of one sector, from that of the other if there is one.
 func (s *solver) build(parity, searches int) (*fock.Operator, error) {
+	if s.sector != nil {
+		return s.sector.Opposite(), nil
+	}
 	begin := time.Now()
 	vectors := 2
 	if s.withVectors() {
@@ -143,6 +147,7 @@ func (s *solver) build(parity, searches int) (*fock.Operator, error) {
 	h, err := fock.NewOperatorOf(s.ctx, s.terms, s.atoms, fock.Options{
 		MemoryBytes: s.opt.MemoryBytes, Vectors: vectors, Parity: parity, MaxOccupation: s.opt.MaxOccupation,
 	})
+	s.sector = h
 	s.ends.BuildSeconds += time.Since(begin).Seconds()
 	return h, err
 }

@@ -9,6 +9,7 @@ import (
 	"testing"
 
 	"hilltop/bosehubbard"
+	"hilltop/bosehubbard/fock"
 	"hilltop/bosehubbard/lattice"
 	"hilltop/testdata"
 )
@@ -37,6 +38,25 @@ func (s system) solve(t testing.TB, opt Options) Ends {
 		t.Fatalf("%+v: %v", s, err)
 	}
 	return ends
+}
+
+// terms writes the system out.
+func (s system) terms(t testing.TB) *fock.Terms {
+	t.Helper()
+	l, err := lattice.Box(s.sites, s.periodic)
+	if err != nil {
+		t.Fatal(err)
+	}
+	terms, err := fock.TermsOf(l, s.model)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return terms
+}
+
+// plane is a model with two axes.
+func plane() bosehubbard.Model {
+	return bosehubbard.Model{Interaction: 3, Axes: []bosehubbard.AxisTerms{{Tunnelling: 1, Curvature: 0.3}, {Tunnelling: 0.6, Curvature: 0.1}}}
 }
 
 // near reports a difference beyond an absolute tolerance.

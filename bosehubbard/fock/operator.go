@@ -3,6 +3,7 @@ package fock
 import (
 	"context"
 	"fmt"
+	"slices"
 
 	"hilltop/bosehubbard"
 	"hilltop/bosehubbard/lattice"
@@ -107,6 +108,32 @@ func buildSector(ctx context.Context, built map[int]*sector, p *part, t int) (er
 		built[t], err = p.build(ctx, t)
 	}
 	return err
+}
+
+// Opposite returns the operator of the other sector of the mirror. The two share
+// what they hold, and their vectors are of one length.
+//
+// It panics if the operator has no parity.
+func (h *Operator) Opposite() *Operator {
+	if h.parity == 0 {
+		panic("fock: the other sector of the whole space")
+	}
+	y := *h.layout
+	y.parity = -h.parity
+	y.dimension = h.both - h.dimension
+	y.blocks = slices.Clone(h.blocks)
+	for i := range y.blocks {
+		b := &y.blocks[i]
+		b.links = slices.Clone(b.links)
+		for k := range b.links {
+			if b.links[k].flipped {
+				b.links[k].factor = -b.links[k].factor
+			}
+		}
+	}
+	other := *h
+	other.layout = &y
+	return &other
 }
 
 // Len returns the length of the vectors that the operator takes.

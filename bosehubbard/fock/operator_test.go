@@ -113,6 +113,7 @@ func TestParitySectors(t *testing.T) {
 		mirrored++
 		plain := newPlainOperator(s.terms, s.atoms)
 		total := 0
+		checkOpposite(t, s)
 		for _, parity := range []int{1, -1} {
 			h := mustOperator(t, s.terms, s.atoms, Options{Parity: parity})
 			total += h.Dimension()
@@ -133,6 +134,21 @@ func TestParitySectors(t *testing.T) {
 	}
 	if mirrored < 15 {
 		t.Errorf("%d systems with a mirror, want at least 15", mirrored)
+	}
+}
+
+// checkOpposite compares the other sector made from one with the one built.
+func checkOpposite(t *testing.T, s system) {
+	t.Helper()
+	even, odd := mustOperator(t, s.terms, s.atoms, Options{Parity: 1}), mustOperator(t, s.terms, s.atoms, Options{Parity: -1})
+	other := even.Opposite()
+	x, y, want := make([]float64, odd.Len()), make([]float64, odd.Len()), make([]float64, odd.Len())
+	odd.RandomTo(x, 1, 2)
+	odd.ApplyTo(want, x, odd.NewWorkspace(1))
+	other.ApplyTo(y, x, other.NewWorkspace(1))
+	back := other.Opposite()
+	if !slices.Equal(y, want) || other.Dimension() != odd.Dimension() || other.Parity() != -1 || back.Dimension() != even.Dimension() {
+		t.Errorf("%s: the sector opposite to the even one is not the odd one", s.name)
 	}
 }
 
