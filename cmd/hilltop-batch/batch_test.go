@@ -150,6 +150,11 @@ func TestExact(t *testing.T) {
 		{[]string{"--sites", "6", "--atoms", "6", "--interaction", "4", "--ring"}, -5.6901934006, 60.6013216850, 462},
 		{[]string{"--sites", "6", "--atoms", "6", "--interaction", "-4", "--curvature", "-0.1"}, -64.044981846, 2.784858540, 462},
 		{[]string{"--grid", "2x3", "--atoms", "0"}, 0, 0, 1},
+		// From the table of graphs, NumPy.
+		{[]string{"--lattice", "kagome", "--grid", "2x2", "--ring", "--atoms", "3", "--interaction", "-2"}, -12.689120825162, 5.8595723934251, 364},
+		{[]string{"--lattice", "triangular", "--grid", "3x2", "--atoms", "4", "--interaction", "-2.1", "--curvature", "-0.1"}, -16.785917291587, 5.3165365372524, 126},
+		{[]string{"--lattice", "chain", "--sites", "6", "--atoms", "4", "--interaction", "4", "--curvature", "-0.1", "--second-tunnelling", "-0.2"}, -5.2003338459996, 24.638568227014, 126},
+		{[]string{"--sites", "6", "--atoms", "4", "--interaction", "1", "--curvature", "0.1", "--max-occupation", "2"}, -5.0834018796308, 8.3210644841793, 90},
 	} {
 		answer := object(t, 0, append([]string{"exact"}, tc.args...)...)
 		need(t, "exact", answer, "dimension", "floor", "ceiling", "seconds")
@@ -158,6 +163,39 @@ func TestExact(t *testing.T) {
 		if math.Abs(floor-tc.floor) > 1e-8 || math.Abs(ceiling-tc.ceiling) > 1e-8 || answer["dimension"] != tc.dimension {
 			t.Errorf("%v: %v, want %.10g to %.10g in %g states", tc.args, answer, tc.floor, tc.ceiling, tc.dimension)
 		}
+	}
+}
+
+// TestExactStates: what the flags add, and only they.
+func TestExactStates(t *testing.T) {
+	plain := object(t, 0, "exact", "--sites", "6", "--atoms", "6", "--interaction", "-4", "--curvature", "-0.1")
+	for _, key := range []string{"floor_state", "floor_cutoff", "cautions"} {
+		if _, there := plain[key]; there {
+			t.Errorf("%s is there though nothing asked for it", key)
+		}
+	}
+	if plain["floor_parity"] != 1.0 || plain["ceiling_parity"] != 1.0 {
+		t.Errorf("parities %v and %v, want 1", plain["floor_parity"], plain["ceiling_parity"])
+	}
+	answer := object(t, 0, "exact", "--sites", "6", "--atoms", "6", "--interaction", "-4", "--curvature", "-0.1",
+		"--states", "--max-occupation", "5", "--workers", "2")
+	need(t, "exact", answer, "floor_cutoff", "ceiling_cutoff", "floor_state", "ceiling_state")
+	state := answer["ceiling_state"].(map[string]any)
+	need(t, "state", state, "occupation", "squared_occupation", "correlations", "kinetic", "interaction", "potential")
+	sum := 0.0
+	for _, n := range state["occupation"].([]any) {
+		sum += n.(float64)
+	}
+	if math.Abs(sum-6) > 1e-10 || len(state["correlations"].([]any)) != 6 {
+		t.Errorf("%g atoms and %d rows of correlations, want 6 of each", sum, len(state["correlations"].([]any)))
+	}
+	apart := object(t, 0, "exact", "--sites", "3", "--atoms", "2", "--tunnelling", "0")
+	if note := apart["cautions"].([]any)[0].(map[string]any); note["code"] != "disconnected" {
+		t.Errorf("sites apart: %v, want the caution disconnected", note)
+	}
+	code, text, _ := call(t, "exact", "--sites", "6", "--atoms", "6", "--states", "--max-occupation", "4")
+	if code != 0 || !strings.Contains(text, "atoms per site at the floor") || !strings.Contains(text, "cuts off at most") || !strings.Contains(text, "even under the mirror") {
+		t.Errorf("for people: exit %d, %s", code, text)
 	}
 }
 
@@ -190,6 +228,10 @@ func TestFailures(t *testing.T) {
 		{"zero sites", usage, "0", 2, []string{"exact", "--sites", "0", "--atoms", "1"}},
 		{"a grid of letters", usage, "3xa", 2, []string{"exact", "--grid", "3xa", "--atoms", "1"}},
 		{"sites and grid", usage, "sites", 2, []string{"exact", "--grid", "3x3", "--sites", "3", "--atoms", "1"}},
+		{"unknown lattice", usage, "hexagon", 2, []string{"exact", "--lattice", "hexagon", "--grid", "3x3", "--atoms", "1"}},
+		{"a kagome of one number", usage, "kagome", 2, []string{"exact", "--lattice", "kagome", "--sites", "3", "--atoms", "1"}},
+		{"negative limit", usage, "max-occupation", 2, []string{"exact", "--sites", "3", "--atoms", "1", "--max-occupation", "-1"}},
+		{"limit too low", usage, "no room", 2, []string{"exact", "--sites", "3", "--atoms", "4", "--max-occupation", "1"}},
 		{"NaN", usage, "interaction", 2, []string{"exact", "--sites", "3", "--atoms", "1", "--interaction", "NaN"}},
 		{"1e9 atoms", tooLarge, "1000000000", 2, []string{"exact", "--sites", "12", "--atoms", "1000000000"}},
 		{"dimension 1e12", tooLarge, "", 2, []string{"exact", "--sites", "22", "--atoms", "22"}},
