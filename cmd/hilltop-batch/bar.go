@@ -30,15 +30,21 @@ func newBar(w io.Writer) *bar {
 // barEvery is the least time between two drawings.
 const barEvery = 100 * time.Millisecond
 
+// show receives the progress of work that is all of a piece.
+func (b *bar) show(done, total int) { b.part("", done, total) }
+
 // progress returns a receiver for one part of the work.
 func (b *bar) progress(what string) func(done, total int) {
-	return func(done, total int) {
-		if b.out == nil || total < 1 || time.Since(b.last) < barEvery {
-			return
-		}
-		b.last = time.Now()
-		b.draw(fmt.Sprintf("%s %s", gauge(done, total), what))
+	return func(done, total int) { b.part(" "+what, done, total) }
+}
+
+// part draws the line, unless that was done just now.
+func (b *bar) part(what string, done, total int) {
+	if b.out == nil || total < 1 || time.Since(b.last) < barEvery {
+		return
 	}
+	b.last = time.Now()
+	b.draw(gauge(done, total) + what)
 }
 
 // gauge draws a share of 30 places.
