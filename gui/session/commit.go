@@ -126,6 +126,9 @@ func (s *Session) editName(e entry, value any, unit string) string {
 	if x, ok := value.(float64); ok && e.Kind == NumberField {
 		return s.placeOf(e.ID) + ": " + e.measure.FormatNumber(e.value, unit) + " → " + e.measure.Format(x, unit)
 	}
+	if value == nil {
+		return s.placeOf(e.ID) + ": none"
+	}
 	return s.placeOf(e.ID) + ": " + shorten(fmt.Sprint(value))
 }
 

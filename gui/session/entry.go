@@ -40,6 +40,8 @@ type catalogue struct {
 type entryGroup struct {
 	name    string
 	entries []entry
+	parts   []Part
+	actions []Action
 }
 
 // all calls f with a pointer to every entry.
@@ -77,19 +79,19 @@ func (s *Session) catalogue() *catalogue {
 func (s *Session) catalogueOf(p *plan.Plan, stage int) *catalogue {
 	facts := s.factsOf(p)
 	c := &catalogue{knobs: knobs(p, stage, facts.recoil)}
-	add := func(name string, entries []entry) {
-		if len(entries) > 0 {
-			c.groups = append(c.groups, entryGroup{name, entries})
+	add := func(name string, entries []entry, parts []Part, actions []Action) {
+		if len(entries) > 0 || len(actions) > 0 {
+			c.groups = append(c.groups, entryGroup{name, entries, parts, actions})
 		}
 	}
-	add("Stage", stageEntries(p, stage))
-	add("Cloud", cloudEntries(p, facts.states))
-	add("Lattice", latticeEntries(p))
-	add("Beams", beamEntries(p))
-	add("Field", fieldEntries(p))
-	add("Model", modelEntries(p))
-	add("Levels", levelEntries(p))
-	add("Plan", planEntries(p))
+	add(stageGroup, stageEntries(p, stage), nil, stageActions(p, stage))
+	add(cloudGroup, cloudEntries(p, facts.states), nil, nil)
+	add(latticeGroup, latticeEntries(p), latticeParts(p), nil)
+	add(beamsGroup, beamEntries(p), beamParts(p), beamActions(p))
+	add(fieldGroup, fieldEntries(p), resonanceParts(p), scatteringActions(p, facts.curves))
+	add(modelGroup, modelEntries(p), axisParts(p), axisActions(p))
+	add(levelsGroup, levelEntries(p), nil, nil)
+	add(planGroup, planEntries(p), nil, nil)
 	return c
 }
 
@@ -155,8 +157,10 @@ func (s *Session) fields() (knobs []Field, groups []Group) {
 		}
 		return out
 	}
+	p := s.doc.now.Plan()
 	for _, g := range c.groups {
-		groups = append(groups, Group{g.name, dressed(g.entries)})
+		fields := dressed(g.entries)
+		groups = append(groups, Group{g.name, summary(g.name, p, fields), fields, g.parts, g.actions})
 	}
 	return dressed(c.knobs), groups
 }
@@ -179,13 +183,31 @@ func (m Measure) inDocument(value float64, unit string) float64 {
 // numberEntry builds the entry of one number. The path is its ID.
 func numberEntry(label, path string, value float64, m Measure) entry {
 	return entry{
-		Field:   Field{ID: path, Label: label, Kind: NumberField, Unit: m.Unit, Path: path, SetPath: path},
+		Field:   Field{ID: path, Label: label, Short: label, Kind: NumberField, Unit: m.Unit, Path: path, SetPath: path},
 		measure: m, value: value,
 	}
 }
 
 func textEntry(label, path, text string) entry {
-	return entry{Field: Field{ID: path, Label: label, Kind: TextField, Text: text, Path: path, SetPath: path}}
+	return entry{Field: Field{ID: path, Label: label, Short: label, Kind: TextField, Text: text, Path: path, SetPath: path}}
+}
+
+// longEntry is a text that may take several lines on the screen.
+func longEntry(label, path, text string) entry {
+	e := textEntry(label, path, text)
+	e.Long = true
+	return e
+}
+
+// under puts entries below the heading of a part, where their labels need not
+// name it: word is what the labels name it by.
+func under(part, word string, entries ...entry) []entry {
+	for i := range entries {
+		e := &entries[i]
+		e.Part = part
+		e.Short = capital(strings.TrimSpace(strings.Replace(e.Label, word, "", 1)))
+	}
+	return entries
 }
 
 func choiceEntry(label, path, text string, choices ...string) entry {

@@ -15,6 +15,7 @@ type facts struct {
 	lattice plan.Lattice
 	recoil  []float64 // Hz, by lattice axis; nil where it cannot be computed
 	states  []string  // of the species; nil where it is not known
+	curves  []string  // the states whose scattering length is known
 }
 
 // factsOf returns the facts of a plan. The caller holds mu.
@@ -23,7 +24,8 @@ func (s *Session) factsOf(p *plan.Plan) facts {
 		return facts{}
 	}
 	if s.facts.recoil == nil || s.facts.species != p.Cloud.Species || !reflect.DeepEqual(s.facts.lattice, *p.Lattice) {
-		s.facts = facts{p.Cloud.Species, *p.Lattice, recoils(p), states(p.Cloud.Species)}
+		s.facts = facts{species: p.Cloud.Species, lattice: *p.Lattice, recoil: recoils(p)}
+		s.facts.states, s.facts.curves = states(p.Cloud.Species)
 	}
 	return s.facts
 }
@@ -41,14 +43,17 @@ func recoils(p *plan.Plan) []float64 {
 	return out
 }
 
-func states(species string) []string {
+// states returns the states of a species, and those with a scattering length.
+func states(species string) (all, known []string) {
 	loaded, err := atom.Load(species)
 	if err != nil {
-		return nil
+		return nil, nil
 	}
-	names := make([]string, len(loaded.States))
-	for i, state := range loaded.States {
-		names[i] = state.Name
+	for _, state := range loaded.States {
+		all = append(all, state.Name)
+		if state.Scattering != nil {
+			known = append(known, state.Name)
+		}
 	}
-	return names
+	return all, known
 }

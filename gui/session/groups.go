@@ -8,11 +8,23 @@ import (
 	"hilltop/bosehubbard/plan"
 )
 
+// Names of the groups, in the order they are shown.
+const (
+	stageGroup   = "Stage"
+	cloudGroup   = "Cloud"
+	latticeGroup = "Lattice"
+	beamsGroup   = "Beams"
+	fieldGroup   = "Field"
+	modelGroup   = "Model"
+	levelsGroup  = "Levels"
+	planGroup    = "Plan"
+)
+
 func planEntries(p *plan.Plan) []entry {
 	return []entry{
-		textEntry("Title", "/title", p.Title),
+		longEntry("Title", "/title", p.Title),
 		choiceEntry("Wanted sign of T", "/aim_sign", p.AimSign, plan.Negative, plan.Positive),
-		textEntry("Note", "/note", p.Note),
+		longEntry("Note", "/note", p.Note),
 	}
 }
 
@@ -56,10 +68,10 @@ func latticeEntries(p *plan.Plan) []entry {
 	var out []entry
 	for i, axis := range p.Lattice.Axes {
 		path, name := "/lattice/axes/"+strconv.Itoa(i), " "+axis.Axis
-		out = append(out, numberEntry("Wavelength"+name, path+"/wavelength_nm", axis.WavelengthNM, Measure{Dimension: Length, Unit: "nm"}))
-		out = append(out, waistEntries("Waist"+name, path, axis.Axis, axis.WaistUM)...)
-		ratio := numberEntry("Return ratio"+name, path+"/return_ratio", axis.ReturnRatio, Measure{Dimension: Ratio})
-		out = append(out, ratio)
+		beam := []entry{numberEntry("Wavelength"+name, path+"/wavelength_nm", axis.WavelengthNM, Measure{Dimension: Length, Unit: "nm"})}
+		beam = append(beam, waistEntries("Waist"+name, path, axis.Axis, axis.WaistUM)...)
+		beam = append(beam, numberEntry("Return ratio"+name, path+"/return_ratio", axis.ReturnRatio, Measure{Dimension: Ratio}))
+		out = append(out, under(latticePart(axis), name, beam...)...)
 	}
 	return out
 }
@@ -68,10 +80,11 @@ func beamEntries(p *plan.Plan) []entry {
 	var out []entry
 	for i, beam := range p.Beams {
 		path, name := "/beams/"+strconv.Itoa(i), fmt.Sprintf(" '%s'", beam.Name)
-		out = append(out, nameEntry(p, i),
+		fields := append([]entry{nameEntry(p, i),
 			choiceEntry("Axis"+name, path+"/axis", beam.Axis, "x", "y", "z"),
-			numberEntry("Wavelength"+name, path+"/wavelength_nm", beam.WavelengthNM, Measure{Dimension: Length, Unit: "nm"}))
-		out = append(out, waistEntries("Waist"+name, path, beam.Axis, beam.WaistUM)...)
+			numberEntry("Wavelength"+name, path+"/wavelength_nm", beam.WavelengthNM, Measure{Dimension: Length, Unit: "nm"})},
+			waistEntries("Waist"+name, path, beam.Axis, beam.WaistUM)...)
+		out = append(out, under(beamPart(beam), name, fields...)...)
 	}
 	return out
 }
@@ -140,9 +153,9 @@ func fieldEntries(p *plan.Plan) []entry {
 	signedGauss := gauss
 	signedGauss.Signed = true
 	for i, r := range p.Scattering.Resonances {
-		path, name := "/scattering/resonances/"+strconv.Itoa(i), fmt.Sprintf("Resonance %d ", i+1)
-		out = append(out, numberEntry(name+"position", path+"/position_g", r.PositionG, gauss),
-			numberEntry(name+"width", path+"/width_g", r.WidthG, signedGauss))
+		path, name := "/scattering/resonances/"+strconv.Itoa(i), resonancePart(i)
+		out = append(out, under(name, name, numberEntry(name+" position", path+"/position_g", r.PositionG, gauss),
+			numberEntry(name+" width", path+"/width_g", r.WidthG, signedGauss))...)
 	}
 	return out
 }
@@ -158,10 +171,14 @@ func modelEntries(p *plan.Plan) []entry {
 		if len(p.Model.Sites) > 1 {
 			name = " " + axisName(i)
 		}
-		out = append(out, numberEntry("Sites"+name, "/model/sites/"+number, float64(n), whole),
-			periodicEntry("Ends"+name, "/model/periodic/"+number, p.Model.Periodicity()[i]))
+		axis := []entry{numberEntry("Sites"+name, "/model/sites/"+number, float64(n), whole),
+			periodicEntry("Ends"+name, "/model/periodic/"+number, p.Model.Periodicity()[i])}
+		if name != "" {
+			axis = under(modelPart(i), name, axis...)
+		}
+		out = append(out, axis...)
 	}
-	return append(out, numberEntry("Atoms", "/model/atoms", float64(p.Model.Atoms), whole))
+	return append(out, numberEntry("Atoms", "/model/atoms", float64(p.Model.Atoms), whole), fockEntry(p.Model))
 }
 
 // Words for an axis of a model.

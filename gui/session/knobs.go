@@ -32,6 +32,7 @@ func (k *knobReader) entry(name string) entry {
 	p := k.plan
 	e := entry{Field: Field{ID: name, Kind: NumberField, Slider: true}}
 	e.Label, e.measure = k.describe(name)
+	e.Short = e.Label
 	e.Unit = e.measure.Unit
 	e.value = k.rows[k.stage+1].Value(name)
 	e.Word = word(name, e.value)

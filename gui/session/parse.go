@@ -251,9 +251,4 @@ func (m Measure) unitFor(text, shown string) (symbol, reason string) {
 	return "", fmt.Sprintf("is %s; give %s", u.noun, m.offer())
 }
 
-func shorten(text string) string {
-	if utf8.RuneCountInString(text) <= longestShown {
-		return text
-	}
-	return string([]rune(text)[:longestShown-1]) + "…"
-}
+func shorten(text string) string { return shortenTo(text, longestShown) }

@@ -75,8 +75,24 @@ type Stop struct {
 
 // Group is a heading with its fields.
 type Group struct {
+	Name    string
+	Summary string // what the fields say, in one line
+	Fields  []Field
+	Parts   []Part   // headings inside the group, in the order of their fields
+	Actions []Action // what changes the shape of the plan here
+}
+
+// Part is one of several things of a kind, such as one beam, whose fields stand
+// under a heading of their own.
+type Part struct {
 	Name   string
-	Fields []Field
+	Remove *Action // nil where it cannot be taken out
+}
+
+// Action changes the shape of the plan; see [Session.Do].
+type Action struct {
+	ID    string
+	Label string
 }
 
 // FieldKind says how a field is drawn.
@@ -94,7 +110,10 @@ const (
 type Field struct {
 	ID    string // stable while the plan keeps its shape; "power_w/sheet" of a knob, a path of others
 	Label string // "Depth x"
+	Short string // the label below the heading of its part; Label where it has none
+	Part  string // name of the part of its group; "" for none
 	Kind  FieldKind
+	Long  bool // a text that may take several lines
 
 	Text  string // as shown, without the unit
 	Unit  string // the shown one; "" for none
