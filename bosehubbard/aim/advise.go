@@ -114,7 +114,7 @@ func (p *Problem) judge(knobs []int, to []float64, criterion string, now *ceilin
 		return nil
 	}
 	advice.Verdict, advice.Broken = after.Verdict, after.Broken()
-	if slices.Contains(advice.Broken, criterion) {
+	if slices.Contains(advice.Broken, criterion) || freezes(now, after) {
 		return nil
 	}
 	before := now.Broken()
@@ -124,6 +124,17 @@ func (p *Problem) judge(knobs []int, to []float64, criterion string, now *ceilin
 		}
 	}
 	return advice
+}
+
+// freezes reports whether an axis that moved stands still for lack of tunnelling:
+// that ends the flip instead of mending it. A layered axis is another matter.
+func freezes(before, after *ceiling.Assessment) bool {
+	for i, m := range after.Motions {
+		if m == ceiling.Frozen && i < len(before.Motions) && before.Motions[i] != ceiling.Frozen {
+			return true
+		}
+	}
+	return false
 }
 
 // roundOnwards rounds value to two significant digits in the direction from -> end,

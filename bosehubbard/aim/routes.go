@@ -21,9 +21,14 @@ func (p *Problem) routes(criterion string, now *ceiling.Assessment) []route {
 	case "interaction":
 		return append(p.fieldJumps(-1, -0.5, -0.25, -0.1, -0.02), p.mirrored(Interaction, -1)...)
 	case "trap_x", "trap_y", "trap_z", "held":
-		return append(p.powers(), p.mirrored(Curvature, axisOf(criterion))...)
+		list := append(p.powers(), p.mirrored(Curvature, axisOf(criterion))...)
+		return append(list, p.deeper(only(axisOf(criterion)))...)
 	case "tilt":
-		return append(p.powers(), p.deeper(func(int) bool { return true })...)
+		list := p.powers()
+		for axis := range 3 {
+			list = append(list, p.deeper(only(axis))...)
+		}
+		return append(list, p.deeper(func(int) bool { return true })...)
 	case "one_band":
 		return append(p.deeper(moves(now)), p.fieldJumps(0.5, 0.25)...)
 	case "layers":
@@ -38,6 +43,8 @@ func (p *Problem) routes(criterion string, now *ceiling.Assessment) []route {
 func moves(now *ceiling.Assessment) func(axis int) bool {
 	return func(axis int) bool { return axis < len(now.Motions) && now.Motions[axis] == ceiling.Moving }
 }
+
+func only(axis int) func(int) bool { return func(i int) bool { return i == axis } }
 
 func axisOf(criterion string) int {
 	return slices.Index([]string{"trap_x", "trap_y", "trap_z"}, criterion)

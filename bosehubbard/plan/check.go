@@ -121,7 +121,7 @@ func (c *checker) oneOf(path, word string, known ...string) bool {
 			return true
 		}
 	}
-	c.badWord(path, "want "+listed(known), nearest(word, known))
+	c.badWord(path, "want "+listed(known), alike(word, known))
 	return false
 }
 

@@ -135,7 +135,7 @@ func (c *checker) powers(path string, powers map[string]float64) {
 			known[i] = b.Name
 		}
 		if c.beamsNamed() && !slices.Contains(known, name) {
-			c.badWord(at, "no beam has this name", nearest(name, known))
+			c.badWord(at, "no beam has this name", alike(name, known))
 			continue
 		}
 		c.within(at, powers[name], power)

@@ -56,7 +56,7 @@ func (c *checker) reference(at, path string, trap bool) {
 		return
 	}
 	c.badKey(at, path, "want the path of a number of this plan or of a knob, like /start/field_g or /field_g",
-		nearest(path, c.numberPaths()))
+		alike(path, c.numberPaths()))
 }
 
 // badKey adds a mistake about the key of a member instead of its value.

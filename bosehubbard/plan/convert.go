@@ -75,7 +75,7 @@ func (b *bench) fail(path, value string, err error) {
 	if unknown, ok := errors.AsType[*atom.UnknownError](err); ok {
 		e.Value = `"` + unknown.Name + `"`
 		e.Reason = "want a known " + unknown.Kind + ": " + listed(unknown.Known)
-		e.Nearest = nearest(unknown.Name, unknown.Known)
+		e.Nearest = alike(unknown.Name, unknown.Known)
 	}
 	b.add(e)
 }

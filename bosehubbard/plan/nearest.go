@@ -1,6 +1,9 @@
 package plan
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // maxWord is the longest word in runes that nearest compares; longer ones are no
 // slips of the pen.
@@ -23,6 +26,28 @@ func nearest(word string, known []string) string {
 		}
 	}
 	return best
+}
+
+// alike returns the known word that word is a slip of: nearest, or the same
+// letters in another order ("Rb87"), but "" where more than a third of the longer
+// word differs.
+func alike(word string, known []string) string {
+	for _, candidate := range known {
+		if sortedLetters(word) == sortedLetters(candidate) {
+			return candidate
+		}
+	}
+	best := nearest(word, known)
+	if best == "" || 3*edits(strings.ToLower(word), strings.ToLower(best)) > max(len(word), len(best)) {
+		return ""
+	}
+	return best
+}
+
+func sortedLetters(word string) string {
+	letters := []rune(strings.ToLower(word))
+	slices.Sort(letters)
+	return string(letters)
 }
 
 // edits counts the insertions, deletions, replacements and swaps of neighbours

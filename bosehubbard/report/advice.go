@@ -5,10 +5,12 @@ import (
 	"fmt"
 	"math"
 	"sort"
+	"strconv"
 	"strings"
 
 	"hilltop/bosehubbard/aim"
 	"hilltop/bosehubbard/apparatus"
+	"hilltop/bosehubbard/atom"
 	"hilltop/bosehubbard/ceiling"
 	"hilltop/bosehubbard/num/digits"
 	"hilltop/bosehubbard/optics"
@@ -32,7 +34,7 @@ func (b *bench) advise(ctx context.Context, r *Report, end *apparatus.Point, now
 			return err
 		}
 		if found != nil {
-			c.Advice = adviceOf(found, func(k aim.Knob) string { return settingPath(b.plan, k.Name) })
+			c.Advice = adviceOf(b.plan, found)
 		}
 	}
 	return nil
@@ -50,7 +52,7 @@ func (b *bench) problem(end *apparatus.Point) *aim.Problem {
 	for k, axis := range b.order {
 		p.Knobs = append(p.Knobs, aim.Knob{
 			Name: fmt.Sprintf("depth_er/%d", k), Kind: aim.Depth, Axis: axis, Value: end.Depth[axis],
-			High: math.Max(40, end.Depth[axis]),
+			High: math.Max(60, end.Depth[axis]),
 		})
 	}
 	p.Knobs = append(p.Knobs, aim.Knob{
@@ -125,7 +127,7 @@ func (b *bench) fieldsFor(end *apparatus.Point) func(float64) []float64 {
 		poles := func(to float64) int {
 			count := 0
 			for _, c := range b.apparatus.Scattering.Crossings([]float64{end.Field, to}) {
-				if c.Kind.String() == "pole" {
+				if c.Kind == atom.Pole {
 					count++
 				}
 			}
@@ -161,13 +163,40 @@ func settingPath(p *plan.Plan, knob string) string {
 }
 
 // adviceOf puts moves into words and plan paths.
-func adviceOf(found *aim.Advice, path func(aim.Knob) string) *Advice {
+func adviceOf(p *plan.Plan, found *aim.Advice) *Advice {
 	out := &Advice{}
 	for _, m := range found.Moves {
-		out.Set = append(out.Set, Set{Path: path(m.Knob), Value: m.To})
+		out.Set = setKnob(p, out.Set, m)
 	}
 	out.Text = steps(found.Moves) + outcome(found)
 	return out
+}
+
+// setKnob adds a move to the values to set. An entry of a list that the plan does
+// not have yet is set by giving the whole list.
+func setKnob(p *plan.Plan, sets []Set, m aim.Move) []Set {
+	path := settingPath(p, m.Knob.Name)
+	key, entry, nested := strings.Cut(m.Knob.Name, "/")
+	index, err := strconv.Atoi(entry)
+	if !nested || err != nil || path == p.Source(len(p.Stages)-1, m.Knob.Name) {
+		return append(sets, Set{Path: path, Value: m.To})
+	}
+	list := strings.TrimSuffix(path, "/"+entry)
+	for i := range sets {
+		if sets[i].Path == list {
+			sets[i].Value.([]float64)[index] = m.To
+			return sets
+		}
+	}
+	rows := p.Rows()
+	var values []float64
+	for _, knob := range p.Knobs() {
+		if strings.HasPrefix(knob, key+"/") {
+			values = append(values, rows[len(rows)-1].Value(knob))
+		}
+	}
+	values[index] = m.To
+	return append(sets, Set{Path: list, Value: values})
 }
 
 // steps puts moves into words; depths that go to one value are named together.
@@ -181,13 +210,16 @@ func steps(moves []aim.Move) string {
 		}
 		words = append(words, step(m))
 	}
-	return strings.Join(words, ", ")
+	for i := 1; i < len(words); i++ {
+		words[i] = strings.ToLower(words[i][:1]) + words[i][1:]
+	}
+	return strings.Join(words, " and ")
 }
 
 func outcome(found *aim.Advice) string {
 	switch {
 	case found.Verdict == ceiling.Sealed:
-		return " to seal."
+		return sealing
 	case len(found.New) > 0:
 		return fmt.Sprintf("; this mends it, but then breaks: %s.", criteriaWords(found.New))
 	case len(found.Broken) > 0:
@@ -220,5 +252,5 @@ func step(m aim.Move) string {
 	case aim.Interaction:
 		return fmt.Sprintf("Set U to %s Hz", digits.Signed(m.To, 4))
 	}
-	return fmt.Sprintf("Set V along %v to %s Hz", optics.Axis(m.Knob.Axis), digits.Signed(m.To, 4))
+	return fmt.Sprintf("Set V along %v to %s Hz per site²", optics.Axis(m.Knob.Axis), digits.Signed(m.To, 4))
 }

@@ -3,8 +3,8 @@ package report
 import (
 	"context"
 	"errors"
-	"fmt"
 	"math"
+	"strconv"
 
 	"hilltop/bosehubbard/apparatus"
 	"hilltop/bosehubbard/atom"
@@ -23,7 +23,8 @@ type bench struct {
 	workspace *apparatus.Workspace
 	sign      ceiling.Sign
 	hold      float64
-	order     []int // axis of each entry of lattice.axes
+	order     []int   // axis of each entry of lattice.axes
+	sag       float64 // m below the centre where the atoms last hung free; 0 if never
 }
 
 func (j *Judge) judgeApparatus(ctx context.Context, p *plan.Plan) (*Report, error) {
@@ -121,7 +122,7 @@ func (b *bench) blame(stage int, err error) error {
 	}
 	settings := b.sequence.Before(stage + 1)
 	return plan.Errors{{
-		Path: b.plan.Source(stage, "field_g"), Value: fmt.Sprintf("%g", settings.Field/si.Gauss),
+		Path: b.plan.Source(stage, "field_g"), Value: strconv.FormatFloat(settings.Field/si.Gauss, 'g', 10, 64),
 		Reason: "the field stands on a pole of the scattering length, where a has no value; move it off the resonance",
 	}}
 }
@@ -137,6 +138,9 @@ func (b *bench) stage(p *apparatus.Point, name string, end float64) Stage {
 		s.GapHz = append(s.GapHz, p.Gap[axis])
 		s.RecoilHz = append(s.RecoilHz, p.Recoil[axis])
 		s.SpacingNM = append(s.SpacingNM, p.Spacing[axis]*1e9)
+		if power := b.apparatus.Lattice[axis].PowerFromDepth(p.Depth[axis]); !math.IsInf(power, 1) {
+			s.LatticePowerW = append(s.LatticePowerW, power)
+		}
 	}
 	for axis, terms := range p.Model.Axes {
 		s.CurvatureHz = append(s.CurvatureHz, terms.Curvature)

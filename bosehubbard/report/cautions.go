@@ -15,7 +15,7 @@ import (
 func (b *bench) cautions(r *Report, end *apparatus.Point, a *ceiling.Assessment) error {
 	for _, stage := range r.Stages {
 		for _, c := range stage.Crosses {
-			if c.Kind == "pole" {
+			if c.Kind == poleName {
 				r.caution("pole_crossed", "Stage '%s' crosses a pole of the scattering length at %s G: doubly occupied sites are lost there.",
 					stage.Name, digits.Format(c.FieldG, 5))
 			}
@@ -28,9 +28,15 @@ func (b *bench) cautions(r *Report, end *apparatus.Point, a *ceiling.Assessment)
 	if err := b.gravityCautions(r); err != nil {
 		return err
 	}
+	b.localTiltCaution(r, end, a)
 	b.wanderCaution(r, end, a)
+	b.fieldCaution(r, end)
+	b.lightCautions(r)
+	b.flipCaution(r)
+	r.stillCaution(a)
+	r.planCautions(b.plan)
 	r.caution("d_lines_only", "Depths, traps and powers use the D1 and D2 lines alone: at 1064 nm that is 1 to 1.5 %% low. Use your own calibration where you have one.")
-	r.caution("no_lifetime", "Not judged yet: three-body loss, photon scattering, noise, and the temperature of the cloud.")
+	r.caution("not_judged", "Not judged yet: the speed of the ramps, the number and the entropy of the atoms, three-body loss, photon scattering, noise.")
 	return nil
 }
 
@@ -59,6 +65,7 @@ func (b *bench) gravityCautions(r *Report) error {
 		if err != nil {
 			return err
 		}
+		b.sag = sag
 		name := "start"
 		if i >= 0 {
 			name = b.sequence.Stages[i].Name

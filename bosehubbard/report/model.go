@@ -41,6 +41,13 @@ func judgeModel(ctx context.Context, p *plan.Plan) (*Report, error) {
 	if r.Ceiling.Exact, err = grow(ctx, p.Model, end); err != nil {
 		return nil, err
 	}
+	r.stillCaution(assessment)
+	r.planCautions(p)
+	for i, periodic := range p.Model.Periodic {
+		if periodic && end.Axes[i].Curvature != 0 {
+			r.caution("ring_trap", "Along %s the model is periodic and has a trap: the potential jumps where the ring closes.", "xyz"[i:i+1])
+		}
+	}
 	r.caution("model", "A model plan: the verdict is for a system without end at this filling; beams, loss and higher bands are not in it.")
 	r.Sentence = r.sentence()
 	return r, nil
@@ -134,7 +141,7 @@ func adviseModel(ctx context.Context, r *Report, p *plan.Plan, s *ceiling.System
 			return err
 		}
 		if found != nil {
-			c.Advice = adviceOf(found, func(k aim.Knob) string { return settingPath(p, k.Name) })
+			c.Advice = adviceOf(p, found)
 		}
 	}
 	return nil

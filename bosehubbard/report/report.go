@@ -93,8 +93,9 @@ type Grown struct {
 	Ceiling float64 `json:"ceiling_hz_per_atom"`
 }
 
-// Stage holds the Hamiltonian at the end of a stage. DepthEr, GapHz and RecoilHz
-// follow the order of the plan's lattice axes; TrapHz and CurvatureHz are x, y, z.
+// Stage holds the Hamiltonian at the end of a stage. DepthEr, GapHz, RecoilHz,
+// TunnellingHz, NextTunnellingHz, SpacingNM and LatticePowerW follow the order of
+// the plan's lattice axes; TrapHz, CurvatureHz and TiltHz are x, y, z.
 type Stage struct {
 	Name               string             `json:"name"`
 	EndMS              float64            `json:"end_ms"`
@@ -108,6 +109,7 @@ type Stage struct {
 	RecoilHz           []float64          `json:"recoil_hz,omitempty"`
 	FieldG             *float64           `json:"field_g,omitempty"`
 	PowerW             map[string]float64 `json:"power_w,omitempty"`
+	LatticePowerW      []float64          `json:"lattice_power_w,omitempty"` // one incoming pass
 	SpacingNM          []float64          `json:"spacing_nm,omitempty"`
 	NextTunnellingHz   []float64          `json:"next_tunnelling_hz,omitempty"` // J2
 	TunnellingTimeMS   *float64           `json:"tunnelling_time_ms,omitempty"` // hbar/J of the fastest axis

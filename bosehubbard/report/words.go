@@ -73,15 +73,33 @@ var criterionWords = map[string]string{
 	"tilt": "tilt", "one_band": "one band", "layers": "layers apart", "held": "something holds", "edge": "edge of the beams", "energy": "energy",
 }
 
-// worst returns the first broken criterion that makes the verdict, or nil.
+// worst returns the broken criterion to speak of: one that makes the verdict, and
+// of several one whose advice seals the plan, else one with an advice, else the
+// first. It is nil where nothing is broken.
 func (r *Report) worst() *Criterion {
+	var best *Criterion
+	rank := -1
 	for i := range r.Ceiling.Criteria {
-		if c := &r.Ceiling.Criteria[i]; !c.Passed && c.Breaks == r.Verdict {
-			return c
+		c := &r.Ceiling.Criteria[i]
+		if c.Passed || c.Breaks != r.Verdict {
+			continue
+		}
+		value := 0
+		if c.Advice != nil {
+			value = 1
+			if strings.HasSuffix(c.Advice.Text, sealing) {
+				value = 2
+			}
+		}
+		if value > rank {
+			best, rank = c, value
 		}
 	}
-	return nil
+	return best
 }
+
+// sealing ends an advice that seals the plan.
+const sealing = " to seal."
 
 func (r *Report) last() *Stage {
 	if n := len(r.Stages); n > 0 {

@@ -34,8 +34,7 @@ func (p *program) bands() *cobra.Command {
 				WannierFourthMoment: b.WannierFourthMoment, BandEdgesEr: b.Edges[:],
 			}
 			if p.json {
-				p.print(answer)
-				return nil
+				return p.print(answer)
 			}
 			_, err = fmt.Fprintf(p.stdout, "depth %g Er\nJ1, J2, J3  %.10g, %.10g, %.10g Er\nwidth  %.10g Er\ngap (q = 1)  %.10g Er\nint w^4 d(kx)  %.10g\n",
 				depth, b.Tunnelling[0], b.Tunnelling[1], b.Tunnelling[2], b.Width, b.Gap, b.WannierFourthMoment)

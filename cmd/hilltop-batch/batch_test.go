@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"context"
 	"encoding/json"
+	"errors"
 	"math"
 	"os"
 	"path/filepath"
@@ -303,6 +304,42 @@ func TestStopIsSaid(t *testing.T) {
 	code := run(ctx, []string{"exact", "--sites", "10", "--atoms", "10", "--json"}, &out, &errs)
 	if code != 1 || !strings.Contains(out.String(), `"stopped"`) {
 		t.Errorf("exit %d, %s", code, out.String())
+	}
+}
+
+// full is an output that takes nothing, like a full disk.
+type full struct{}
+
+func (full) Write([]byte) (int, error) { return 0, errors.New("no space left") }
+
+func TestLostOutputIsAFailure(t *testing.T) {
+	for _, args := range [][]string{{"bands", "--depth", "3"}, {"bands", "--depth", "3", "--json"}, {"judge", planFile(t, "skerry-demo"), "--json"}} {
+		var errs bytes.Buffer
+		if code := run(context.Background(), args, full{}, &errs); code != 1 || !strings.Contains(errs.String(), "no space left") {
+			t.Errorf("%v: exit %d, %q", args, code, errs.String())
+		}
+	}
+}
+
+func TestTerminalsAreNotDriven(t *testing.T) {
+	data, err := assets.Plan("skerry-demo")
+	if err != nil {
+		t.Fatal(err)
+	}
+	text := strings.Replace(string(data), "Skerry bench, negative", `\u001b[2J\u0007evil`, 1)
+	if _, stdout, _ := call(t, "judge", write(t, []byte(text))); strings.ContainsAny(stdout, "\x1b\x07") || !strings.Contains(stdout, "evil") {
+		t.Errorf("control characters reach the terminal: %q", stdout[:60])
+	}
+}
+
+func TestRefusalsNameTheFile(t *testing.T) {
+	data, err := assets.Plan("skerry-demo")
+	if err != nil {
+		t.Fatal(err)
+	}
+	path := write(t, []byte(strings.Replace(string(data), `"field_g": 200`, `"field_g": 402.5`, 1)))
+	if _, _, stderr := call(t, "judge", path); !strings.Contains(stderr, path) || !strings.Contains(stderr, "402.5") {
+		t.Errorf("%q does not name %s", stderr, path)
 	}
 }
 

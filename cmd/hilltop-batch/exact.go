@@ -81,8 +81,7 @@ func (p *program) runExact(cmd *cobra.Command, f exactFlags) error {
 	}
 	answer := answerOf(ends, f)
 	if p.json {
-		p.print(answer)
-		return nil
+		return p.print(answer)
 	}
 	return answer.write(p.stdout)
 }

@@ -32,7 +32,9 @@ func run(ctx context.Context, args []string, stdout, stderr io.Writer) int {
 	}
 	f := failureOf(err)
 	if p.json || wantsJSON(args) {
-		p.print(map[string]failure{"error": f})
+		if err := p.print(map[string]failure{"error": f}); err != nil {
+			fmt.Fprintln(stderr, "hilltop-batch:", err)
+		}
 	} else {
 		fmt.Fprintln(stderr, "hilltop-batch: "+f.Message)
 		if f.Kind == usage {
@@ -80,12 +82,15 @@ func args(check cobra.PositionalArgs) cobra.PositionalArgs {
 	}
 }
 
-// print writes one indented JSON object; values that JSON cannot hold are a
-// programmer's mistake.
-func (p *program) print(value any) {
+// print writes one indented JSON object, or says why that failed; values that
+// JSON cannot hold are a programmer's mistake.
+func (p *program) print(value any) error {
 	text, err := json.MarshalIndent(value, "", "  ")
 	if err != nil {
 		panic(fmt.Sprintf("hilltop-batch: %v", err))
 	}
-	fmt.Fprintf(p.stdout, "%s\n", text)
+	if _, err := fmt.Fprintf(p.stdout, "%s\n", text); err != nil {
+		return fileError{fmt.Errorf("standard output: %w", err)}
+	}
+	return nil
 }
