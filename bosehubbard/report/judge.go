@@ -2,7 +2,6 @@ package report
 
 import (
 	"context"
-	"errors"
 	"fmt"
 	"math"
 
@@ -23,18 +22,14 @@ func NewJudge() *Judge { return &Judge{workspace: apparatus.NewWorkspace()} }
 // Of judges one plan with fresh scratch.
 func Of(ctx context.Context, p *plan.Plan) (*Report, error) { return NewJudge().Judge(ctx, p) }
 
-// ErrNotJudged says that plans of this kind cannot be judged yet.
-var ErrNotJudged = errors.New("plans with levels are read but not judged yet")
-
 // Judge takes a plan to its report: J, U, V at the end of every stage, bounds,
 // criteria, advice, verdict, cautions.
 //
-// It returns plan.Errors for what the document causes, ErrNotJudged for a levels
-// plan, and ctx's error if stopped.
+// It returns plan.Errors for what the document causes, and ctx's error if stopped.
 func (j *Judge) Judge(ctx context.Context, p *plan.Plan) (*Report, error) {
 	switch {
 	case p.Levels != nil:
-		return nil, plan.Errors{{Path: "/levels", Value: "levels", Reason: ErrNotJudged.Error()}}
+		return judgeLevels(p)
 	case p.Model != nil:
 		return judgeModel(ctx, p)
 	}

@@ -15,6 +15,7 @@ type Report struct {
 	Ceiling  Ceiling   `json:"ceiling"`
 	Start    *Stage    `json:"start,omitempty"` // the settings before the first stage
 	Stages   []Stage   `json:"stages"`
+	Levels   *Levels   `json:"levels,omitempty"`
 	Cautions []Caution `json:"cautions,omitempty"`
 }
 

@@ -180,13 +180,42 @@ func TestLayeredAxisHasAReasonAndNoBounds(t *testing.T) {
 	}
 }
 
-func TestLevelsAreRefusedWithTheReason(t *testing.T) {
-	d := open(t, []byte(`{"format": "hilltop-plan", "version": 1, "levels": {"energies_hz": [-8000, 8000], "degeneracies": [1, 1],
-		"bodies": 1e20, "inner_time_s": 1e-4, "outer_time_s": 300, "energy_hz_per_body": 5000}}`))
-	_, err := Of(context.Background(), d.Plan())
-	var mistakes plan.Errors
-	if !errors.As(err, &mistakes) || mistakes[0].Path != "/levels" {
-		t.Errorf("got %v, want a mistake at /levels", err)
+// TestLevels: two levels +-e at mean energy x e have beta = ln((1-x)/(1+x))/2e
+// and S = -sum p ln p (derived).
+func TestLevels(t *testing.T) {
+	r := judge(t, open(t, testdata.Plan(t, "levels-spin")).Plan())
+	const e, x = 8000.0, 5000.0 / 8000
+	beta := math.Log((1-x)/(1+x)) / (2 * e)
+	up := (1 + x) / 2
+	entropy := -up*math.Log(up) - (1-up)*math.Log(1-up)
+	l := r.Levels
+	if r.Verdict != "sealed" || l == nil || l.BetaPerHz == nil {
+		t.Fatalf("%s: %+v", r.Sentence, l)
+	}
+	if math.Abs(*l.BetaPerHz-beta) > 1e-12*math.Abs(beta) || math.Abs(l.EntropyKB-entropy) > 1e-12 {
+		t.Errorf("beta %.12g, S %.12g; want %.12g, %.12g", *l.BetaPerHz, l.EntropyKB, beta, entropy)
+	}
+	if want := si.KelvinFromHz(1 / beta); math.Abs(float64(l.Temperature)-want) > 1e-9*math.Abs(want) {
+		t.Errorf("T %g K, want %g", l.Temperature, want)
+	}
+	finite(t, "levels", r)
+	for _, tc := range []struct {
+		path, verdict string
+		value         any
+	}{
+		{"/levels/unbounded", "open", true}, {"/levels/outer_time_s", "leaky", 5e-4},
+		{"/levels/energy_hz_per_body", "astray", -5000.0}, {"/levels/energy_hz_per_body", "astray", 0.0},
+		{"/levels/energy_hz_per_body", "sealed", 8000.0},
+	} {
+		d, err := open(t, testdata.Plan(t, "levels-spin")).With(tc.path, tc.value)
+		if err != nil {
+			t.Fatal(err)
+		}
+		r := judge(t, d.Plan())
+		if r.Verdict != tc.verdict {
+			t.Errorf("%s = %v: %s, want %s", tc.path, tc.value, r.Verdict, tc.verdict)
+		}
+		finite(t, tc.path, r)
 	}
 }
 

@@ -71,6 +71,7 @@ func (r *Report) tightest() *Criterion {
 var criterionWords = map[string]string{
 	"interaction": "interaction", "trap_x": "trap along x", "trap_y": "trap along y", "trap_z": "trap along z",
 	"tilt": "tilt", "one_band": "one band", "layers": "layers apart", "held": "something holds", "edge": "edge of the beams", "energy": "energy",
+	"lifetime": "lifetime", "levels": "bound of the levels",
 }
 
 // worst returns the broken criterion to speak of: one that makes the verdict, and
@@ -135,11 +136,19 @@ func (r *Report) phrase(c *Criterion) string {
 	case "edge":
 		return "the beams end too soon (short by " + amount + ")"
 	case "energy":
-		return "the state lies past infinite temperature (by " + amount + " per site)"
+		each := " per site)"
+		if r.Levels != nil {
+			each = " per body)"
+		}
+		return "the state lies past infinite temperature (by " + amount + each
+	case "lifetime":
+		return "the state drains before it forms (short by " + amount + ")"
+	case "levels":
+		return "the levels go on upwards without end"
 	}
 	return c.Name
 }
 
-var unitWords = map[string]string{"Hz": "Hz", "a0": "a0", "Hz/site2": "Hz/site²"}
+var unitWords = map[string]string{"Hz": "Hz", "a0": "a0", "Hz/site2": "Hz/site²", "ms": "ms"}
 
 func title(word string) string { return strings.ToUpper(word[:1]) + word[1:] }

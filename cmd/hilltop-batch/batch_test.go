@@ -12,6 +12,7 @@ import (
 	"testing"
 
 	"hilltop/assets"
+	"hilltop/testdata"
 )
 
 // call runs one command line and returns the exit code and both outputs.
@@ -126,6 +127,18 @@ func need(t *testing.T, where string, object map[string]any, keys ...string) {
 	}
 }
 
+func TestJudgeLevels(t *testing.T) {
+	path := write(t, testdata.Plan(t, "levels-spin"))
+	answer := object(t, 0, "judge", path)
+	need(t, "levels", answer["levels"].(map[string]any), "energy_hz_per_body", "beta_per_hz", "temperature_k", "entropy_per_body_kb", "window_ms")
+	if answer["verdict"] != "sealed" {
+		t.Errorf("verdict %v", answer["verdict"])
+	}
+	if code, text, _ := call(t, "judge", path); code != 0 || !strings.Contains(text, "beta −") {
+		t.Errorf("for people: exit %d, %q", code, text)
+	}
+}
+
 // TestBands: J and the gap at s = 10, Bloch, Dalibard, Zwerger, Rev. Mod. Phys.
 // 80, 885 (2008), Table I (4J = 0.076730), and plane waves outside this project.
 func TestBands(t *testing.T) {
@@ -204,8 +217,6 @@ func TestExactStates(t *testing.T) {
 // names the flag, key or file.
 func TestFailures(t *testing.T) {
 	folder := t.TempDir()
-	levels := write(t, []byte(`{"format": "hilltop-plan", "version": 1, "title": "two levels", "levels": {"energies_hz": [-8000, 8000],
-		"degeneracies": [1, 1], "bodies": 1e20, "inner_time_s": 1e-4, "outer_time_s": 300, "energy_hz_per_body": 5000}}`))
 	for _, tc := range []struct {
 		name, kind, say string
 		code            int
@@ -224,7 +235,6 @@ func TestFailures(t *testing.T) {
 		{"a folder", file, folder, 1, []string{"judge", folder}},
 		{"not JSON", document, "line 1", 2, []string{"judge", write(t, []byte("hello"))}},
 		{"truncated", document, "line", 2, []string{"judge", write(t, []byte(`{"format": "hilltop-plan", "ver`))}},
-		{"levels", document, "levels", 2, []string{"judge", levels}},
 		{"negative atoms", usage, "-1", 2, []string{"exact", "--sites", "3", "--atoms", "-1"}},
 		{"zero sites", usage, "0", 2, []string{"exact", "--sites", "0", "--atoms", "1"}},
 		{"a grid of letters", usage, "3xa", 2, []string{"exact", "--grid", "3xa", "--atoms", "1"}},
