@@ -5,6 +5,12 @@
 #   sh cmd/start.sh [PLAN.json]
 set -eu
 plan=""
+case ${1:-} in
+-*)
+	echo "usage: sh cmd/start.sh [PLAN.json]" >&2
+	exit 2
+	;;
+esac
 if [ -n "${1:-}" ]; then # a relative path counts from where the user stands
 	case $1 in
 	/*) plan=$1 ;;
@@ -16,7 +22,7 @@ cd "$(dirname "$0")/.."
 
 if [ -z "${DISPLAY:-}${WAYLAND_DISPLAY:-}" ] && [ "$(uname -s)" = Linux ]; then
 	need_go
-	say "no display (neither DISPLAY nor WAYLAND_DISPLAY is set): printing the verdict instead of opening the window"
+	say "no display (neither DISPLAY nor WAYLAND_DISPLAY is set): printing the verdict instead of opening the window" >&2
 	CGO_ENABLED=0 go build -trimpath -o bin/hilltop-batch ./cmd/hilltop-batch
 	exec bin/hilltop-batch judge "${plan:-assets/plans/skerry-demo.json}"
 fi

@@ -38,7 +38,7 @@ type Axis struct {
 	Band       Interval // edges of the lowest band about its centre
 	Gap        float64  // smallest gap to the next band; +Inf for a single-band model
 	Curvature  float64  // V, Hz per site squared
-	Trap       float64  // signed trap frequency, Hz; used for margins where Mass terms are known
+	Trap       float64  // signed trap frequency, Hz, of an apparatus
 	Tilt       float64  // F, Hz per site
 }
 
@@ -46,7 +46,7 @@ type Axis struct {
 type Box struct {
 	Sites []int // per axis, in the order of Axes
 	Atoms int
-	Fock  []int // atoms per site, row-major, last axis fastest; nil where no state is given
+	Fock  []int // atoms per site, first axis fastest; nil where no state is given
 }
 
 // System is all that the verdict needs.
@@ -67,7 +67,7 @@ type System struct {
 	EdgeDrop func(moving [3]bool) (float64, error)
 }
 
-// Layer says why an axis that does not move stands still.
+// motion is what atoms do along the axis within the hold.
 func (a Axis) motion(hold float64) Motion {
 	tilt, j := math.Abs(a.Tilt), math.Abs(a.Tunnelling)
 	switch {

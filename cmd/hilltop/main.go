@@ -11,6 +11,7 @@ import (
 	"log"
 	"os"
 	"os/signal"
+	"strings"
 	"sync/atomic"
 	"syscall"
 
@@ -25,6 +26,21 @@ import (
 const appID = "lab.hilltop.planner"
 
 func main() { os.Exit(run(os.Args[1:], os.Stderr)) }
+
+// show runs the window until it is closed. The toolkit panics where there is no
+// display to open it on; that is an error of the machine, not of the program.
+func show(window *gui.Window) (err error) {
+	defer func() {
+		if fault := recover(); fault != nil {
+			if !strings.Contains(fmt.Sprint(fault), "GLFW library is not initialized") {
+				panic(fault)
+			}
+			err = fmt.Errorf("cannot open a window on display %q; hilltop-batch judge PLAN needs none", os.Getenv("DISPLAY"))
+		}
+	}()
+	window.Native().ShowAndRun()
+	return nil
+}
 
 // run opens the window and returns the exit code once it is closed.
 func run(args []string, stderr io.Writer) int {
@@ -44,7 +60,10 @@ func run(args []string, stderr io.Writer) int {
 	program := app.NewWithID(appID)
 	window := gui.New(program, opt)
 	stopped := quitOnSignal(program)
-	window.Native().ShowAndRun()
+	if err := show(window); err != nil {
+		fmt.Fprintln(stderr, "hilltop:", err)
+		return 1
+	}
 	if !stopped.Load() {
 		window.Close()
 	}
