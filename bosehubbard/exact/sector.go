@@ -2,6 +2,7 @@ package exact
 
 import (
 	"fmt"
+	"strings"
 
 	"hilltop/bosehubbard/fock"
 )
@@ -20,6 +21,15 @@ const (
 	SectorEven // the states that the mirror of fock.Terms.Mirror leaves as they are
 	SectorOdd  // the states that it reverses
 )
+
+// sectorText names the sectors that are searched.
+func sectorText(searches []search) string {
+	var names []string
+	for _, one := range searches {
+		names = append(names, map[int]string{0: "whole", 1: "even", -1: "odd"}[one.parity])
+	}
+	return strings.Join(names, " and ")
+}
 
 // search is a sector with the ends that are looked for in it.
 type search struct {

@@ -21,6 +21,7 @@ type Options struct {
 	EndStates     bool    // fill FloorState and CeilingState; twice the time
 	Workers       int     // goroutines that share the work; 0: what the machine runs at once
 	Sector        Sector  // which part of the spectrum
+	Momentum      []int   // the sector of quasi-momentum 2 pi m/L, one m for each closed axis; nil: all
 	MaxOccupation int     // most atoms on one site; 0: no limit. Sets FloorCutoff and CeilingCutoff
 
 	// Progress, if not nil, is called on the computing goroutine; done never falls.
@@ -46,6 +47,9 @@ type Ends struct {
 	// The sector of the mirror in which the end was found: even +1, odd -1; 0 if the
 	// whole space was searched.
 	FloorParity, CeilingParity int
+
+	// Sector says in words what was searched, such as "even" or "quasi-momentum [1]".
+	Sector string
 
 	Connected                  bool // hops lead from any site to any other
 	Iterations                 int  // products with H in the search, 0 if dense
@@ -111,11 +115,14 @@ func (s *solver) withVectors() bool { return s.opt.EndStates || s.opt.MaxOccupat
 
 // run searches the sectors one after the other and describes what was found.
 func (s *solver) run() (Ends, error) {
+	if s.opt.Momentum != nil {
+		return s.bloch()
+	}
 	searches, err := s.plan()
 	if err != nil {
 		return Ends{}, err
 	}
-	s.ends = Ends{Seed: s.opt.Seed, Connected: s.terms.Connected()}
+	s.ends = Ends{Seed: s.opt.Seed, Connected: s.terms.Connected(), Sector: sectorText(searches)}
 	var short *lanczos.NotConvergedError
 	for i, search := range searches {
 		err := s.search(search, i, len(searches))
@@ -189,15 +196,19 @@ func (s *solver) search(sector search, number, of int) error {
 	return err
 }
 
+func (s *solver) lanczosOptions() lanczos.Options {
+	return lanczos.Options{
+		Tolerance: s.opt.Tolerance, MaxIterations: s.opt.MaxIterations, Seed: s.opt.Seed, Workers: s.opt.Workers,
+	}
+}
+
 // lanczos runs the iteration in one sector.
 func (s *solver) lanczos(h *fock.Operator, sector search, number, of int) (lanczos.Result, error) {
 	if len(s.scratch[0]) != h.Len() {
 		s.scratch = [2][]float64{make([]float64, h.Len()), make([]float64, h.Len())}
 	}
-	opt := lanczos.Options{
-		Tolerance: s.opt.Tolerance, MaxIterations: s.opt.MaxIterations, Seed: s.opt.Seed,
-		Vectors: s.withVectors(), Workers: s.opt.Workers, Scratch: s.scratch,
-	}
+	opt := s.lanczosOptions()
+	opt.Vectors, opt.Scratch = s.withVectors(), s.scratch
 	switch {
 	case !sector.ceiling:
 		opt.Ends = lanczos.OnlyLowest

@@ -25,6 +25,9 @@ type Terms struct {
 	// Mirrors are permutations of the sites that may be symmetries, such as the
 	// reflections of the lattice; what is none is passed over.
 	Mirrors [][]int
+
+	// Translations that may be symmetries, for the sectors of quasi-momentum.
+	Translations []lattice.Translation
 }
 
 // Hop lets an atom go from either of two sites to the other. Its Amplitude is the
@@ -44,7 +47,7 @@ func TermsOf(l *lattice.Lattice, m bosehubbard.Model) (*Terms, error) {
 	}
 	t := &Terms{
 		Sites: l.Sites, Interaction: m.Interaction,
-		Potential: make([]float64, l.Sites), Mirrors: l.Reflections(),
+		Potential: make([]float64, l.Sites), Mirrors: l.Reflections(), Translations: l.Translations,
 	}
 	for site, p := range l.Positions {
 		for a, terms := range m.Axes {

@@ -13,6 +13,15 @@ type Lattice struct {
 	Axes      int // number of directions of bonds, each with its own tunnelling, 1 to 3
 	Bonds     []Bond
 	Positions [][3]float64 // in sites about the centre, length Sites; 0 on axes that do not exist
+
+	// Translations by one cell along each closed axis, which keep all bonds.
+	Translations []Translation
+}
+
+// Translation sends site i to Place[i]; Order of them bring every site back.
+type Translation struct {
+	Place []int
+	Order int
 }
 
 // Bond joins two sites along one axis: of a box 0 for x, 1 for y, 2 for z, of other
@@ -50,7 +59,27 @@ func Box(sites []int, periodic []bool) (*Lattice, error) {
 			stride *= length[a]
 		}
 	}
+	stride := 1
+	for a, n := range sites {
+		if periodic[a] && n > 1 {
+			l.Translations = append(l.Translations, translation(total, stride, n))
+		}
+		stride *= n
+	}
 	return l, nil
+}
+
+// translation shifts blocks of `block` sites, every `order` of which form a ring.
+func translation(sites, block, order int) Translation {
+	t := Translation{Place: make([]int, sites), Order: order}
+	for i := range t.Place {
+		if i/block%order == order-1 {
+			t.Place[i] = i - (order-1)*block
+		} else {
+			t.Place[i] = i + block
+		}
+	}
+	return t
 }
 
 // count checks the shape of a box and returns its number of sites.

@@ -78,6 +78,15 @@ func newPatch(p plane, cells []int, periodic bool) (*Lattice, error) {
 		}
 	}
 	l.centre()
+	if periodic {
+		block := len(p.sites)
+		for _, n := range cells {
+			if n > 1 {
+				l.Translations = append(l.Translations, translation(l.Sites, block, n))
+			}
+			block *= n
+		}
+	}
 	return l, nil
 }
 

@@ -203,6 +203,10 @@ func TestExactStates(t *testing.T) {
 	if math.Abs(sum-6) > 1e-10 || len(state["correlations"].([]any)) != 6 {
 		t.Errorf("%g atoms and %d rows of correlations, want 6 of each", sum, len(state["correlations"].([]any)))
 	}
+	ring := object(t, 0, "exact", "--sites", "6", "--atoms", "1", "--ring", "--momentum", "2")
+	if floor := ring["floor"].(float64); math.Abs(floor-1) > 1e-12 || ring["sector"] != "quasi-momentum [2]" || ring["dimension"] != 1.0 {
+		t.Errorf("one atom of quasi-momentum 2 pi/3: %v, want 1 J = -2 J cos(2 pi/3)", ring)
+	}
 	apart := object(t, 0, "exact", "--sites", "3", "--atoms", "2", "--tunnelling", "0")
 	if note := apart["cautions"].([]any)[0].(map[string]any); note["code"] != "disconnected" {
 		t.Errorf("sites apart: %v, want the caution disconnected", note)

@@ -13,6 +13,7 @@ import (
 // exactAnswer holds the keys of the verb exact; totals in the unit of the flags.
 type exactAnswer struct {
 	Dimension       int         `json:"dimension"`
+	Sector          string      `json:"sector"` // what was searched
 	Floor           float64     `json:"floor"`
 	Ceiling         float64     `json:"ceiling"`
 	FloorResidual   float64     `json:"floor_residual"`
@@ -73,7 +74,7 @@ func (p *program) runExact(cmd *cobra.Command, f exactFlags) error {
 	}
 	bar := newBar(p.stderr)
 	ends, err := exact.SolveTerms(cmd.Context(), s.terms, f.atoms, exact.Options{
-		MaxOccupation: f.most, EndStates: f.states, Workers: f.workers, Progress: bar.show,
+		MaxOccupation: f.most, EndStates: f.states, Momentum: f.momentum, Workers: f.workers, Progress: bar.show,
 	})
 	bar.clear()
 	if err != nil {
@@ -88,7 +89,7 @@ func (p *program) runExact(cmd *cobra.Command, f exactFlags) error {
 
 func answerOf(ends exact.Ends, f exactFlags) *exactAnswer {
 	a := &exactAnswer{
-		Dimension: ends.Dimension, Floor: ends.Floor, Ceiling: ends.Ceiling,
+		Dimension: ends.Dimension, Sector: ends.Sector, Floor: ends.Floor, Ceiling: ends.Ceiling,
 		FloorResidual: ends.FloorResidual, CeilingResidual: ends.CeilingResidual,
 		FloorParity: ends.FloorParity, CeilingParity: ends.CeilingParity,
 		Iterations: ends.Iterations, Seconds: seconds{ends.BuildSeconds, ends.SolveSeconds},

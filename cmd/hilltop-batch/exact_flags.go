@@ -21,6 +21,7 @@ type exactFlags struct {
 	tunnelling, interaction, curvature float64
 	second                             float64
 	most, workers                      int
+	momentum                           []int
 }
 
 func (f *exactFlags) register(cmd *cobra.Command) {
@@ -36,6 +37,7 @@ func (f *exactFlags) register(cmd *cobra.Command) {
 	flags.Float64Var(&f.curvature, "curvature", 0, "V per site squared, negative pushes outwards")
 	flags.IntVar(&f.most, "max-occupation", 0, "most atoms on a site, 0 for no limit; its error is bounded")
 	flags.BoolVar(&f.states, "states", false, "describe the states at both ends; twice the time")
+	flags.IntSliceVar(&f.momentum, "momentum", nil, "only the states of quasi-momentum 2 pi m/L, one m for each closed axis: 1 or 0,2")
 	flags.IntVar(&f.workers, "workers", 0, "processors to use, 0 for all; the answer is the same")
 	must(cmd.MarkFlagRequired("atoms"))
 	cmd.MarkFlagsMutuallyExclusive("sites", "grid")
