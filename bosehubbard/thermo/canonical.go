@@ -51,26 +51,16 @@ type Average struct {
 }
 
 // Canonical computes energy, entropy and energy variance, and on request where the
-// atoms are, at inverse temperatures [1/Hz] of either sign, answered in order.
+// atoms are, at inverse temperatures [1/Hz] of either sign, answered in order:
+// Z = Tr exp(-beta H), E = <H>, S = ln Z + beta E. It stops within 50 ms of ctx.
 //
-//	Z = Tr exp(-beta H),   E = <H>,   S = ln Z + beta E
-//
-// Weights count from the end of the spectrum that a state of that sign sits at, so
-// that none overflows and that of the end stays at any |beta|. Levels closer than
-// 1e-7 of the width of the spectrum, 1e-13 where it is known in full, count as one.
-//
-// Up to 500 states of each sector of a mirror, 250 with Observables, the spectrum is
-// known in full. Beyond, some levels at both ends
-// are found and the rest is averaged over random vectors, which leaves a relative
-// error of about sqrt(2/(Vectors Z)) on the rest Z. Cost: Steps products with each
-// vector and some 500 before; 2 vectors for each goroutine and 4 Levels, 10 with
-// Observables. The numbers do not depend on Workers. It stops within 50 ms of ctx.
+// Up to 500 states of each sector of a mirror, 250 with Observables, all levels are
+// found. Beyond, some at both ends are, and the rest is averaged over random vectors;
+// see doc.go. Cost: Steps products with each vector and some 500 before; 2 vectors
+// for each goroutine, 10 with Observables, and 8 Levels.
 //
 // It returns a *fock.TooLargeError before it allocates anything large, an error
 // for a beta that is not finite or a bad option, and ctx.Err() if stopped.
-//
-// Source: Jaklic and Prelovsek, Adv. Phys. 49, 1 (2000); Morita and Tohyama, Phys.
-// Rev. Research 2, 013205 (2020), for the levels left out; from memory.
 func Canonical(ctx context.Context, s System, betas []float64, opt CanonicalOptions) (*Averages, error) {
 	begin := time.Now()
 	if err := opt.check(betas); err != nil {
@@ -95,6 +85,9 @@ func Canonical(ctx context.Context, s System, betas []float64, opt CanonicalOpti
 		if err := e.observe(ctx, s.Lattice, s.Atoms, a.Points); err != nil {
 			return nil, err
 		}
+	}
+	if opt.Progress != nil {
+		opt.Progress(e.total, e.total)
 	}
 	a.BuildSeconds, a.SolveSeconds = built.Sub(begin).Seconds(), time.Since(built).Seconds()
 	return a, nil

@@ -19,7 +19,7 @@ type Options struct {
 
 	Points  int  // of the curve; 0: 200
 	Moments int  // of the expansion, even; 0: 2.5 sqrt(dimension), 32 to 256
-	Vectors int  // random vectors, at least 2; 0: 8, more below 40,000 states
+	Vectors int  // random vectors, at least 2; 0: 8, more below 150,000 states
 	Volume  bool // fill VolumeEntropy and VolumeBeta
 
 	Seed        uint64 // of the random vectors
@@ -31,8 +31,8 @@ type Options struct {
 }
 
 const (
-	completeLimit = 2000   // states up to which its trace runs over all of them: under a second
-	steadyStates  = 60_000 // states times vectors/8 that keep the error of S below 0.1
+	completeLimit = 2000    // states up to which its trace runs over all of them: under a second
+	steadyStates  = 150_000 // states times vectors/8 that keep the error of S below 0.1
 
 	mostPoints  = 1_000_000
 	mostMoments = 1 << 16
@@ -80,21 +80,17 @@ func (o Options) withDefaults(dimension int) Options {
 	return o
 }
 
-// Entropy computes the density of states, S(E) and beta(E) of a system.
+// Entropy computes the density of states, S(E) and beta(E) of a system. It stops
+// within 50 ms of ctx. The numbers depend on the seed, not on Workers.
 //
 // Up to 500 states of each sector of a mirror the spectrum is diagonalised in full,
-// and up to 2000 in all the trace runs over all states: the only error is the broadening. Beyond, and wherever
-// opt.Vectors says so, the kernel polynomial method runs on random vectors, whose
-// error the curve states. Cost: Moments/2 products with the Hamiltonian for each
-// vector, and 2 vectors as long as the space for each goroutine, or for all if there
-// is no memory for more; with a mirror, vectors are half as long and twice as many.
-// The numbers depend on the seed, not on Workers. It stops within 50 ms of ctx.
+// up to 2000 in all the trace runs over all states, and beyond over random vectors;
+// see doc.go. Cost: Moments/2 products with each vector and 40 before; 2 vectors for
+// each goroutine, or for all if the memory is short.
 //
-// It returns a *fock.TooLargeError before it allocates anything large, an error
-// that wraps a *chebyshev.OutsideError if given ends leave out a part of the
-// spectrum, one that wraps ErrOneEnergy, and ctx.Err() if stopped.
-//
-// Source: Weisse, Wellein, Alvermann and Fehske, Rev. Mod. Phys. 78, 275 (2006).
+// It returns a *fock.TooLargeError before it allocates anything large, one that
+// wraps a *chebyshev.OutsideError if given ends leave out a part of the spectrum,
+// one that wraps ErrOneEnergy, and ctx.Err() if stopped.
 func Entropy(ctx context.Context, s System, opt Options) (*Curve, error) {
 	begin := time.Now()
 	opt, err := opt.check()

@@ -37,7 +37,7 @@ type known struct {
 func knownSystems(t testing.TB) []known {
 	t.Helper()
 	line := []bosehubbard.AxisTerms{{Tunnelling: 1}}
-	antitrap := []bosehubbard.AxisTerms{{Tunnelling: 1, Curvature: -0.3, Tilt: 0.2}, {Tunnelling: 0.7, Curvature: -0.1}}
+	antitrap := []bosehubbard.AxisTerms{{Tunnelling: 1, Curvature: -0.3, Tilt: 0.2}, {Tunnelling: 0.7, Curvature: -0.1, Tilt: 0.05}}
 	all := []known{
 		{name: "free bosons on a chain", system: box(t, 8, 0, line, false, 8)},
 		{name: "free bosons on a tilted anti-trap", system: box(t, 8, 0, antitrap, false, 4, 2)},
