@@ -134,7 +134,7 @@ func TestSliderDragIsOneEdit(t *testing.T) {
 
 func TestStripExplains(t *testing.T) {
 	b := newBench(t, setup{})
-	page := b.window.pages[0].(*CeilingPage)
+	page := b.ceilingPage()
 	number := page.rows[0].margin
 	b.press(number, fyne.KeySpace)
 	if !b.window.strip.Visible() || b.window.strip.formula.Text == "" {

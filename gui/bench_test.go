@@ -61,27 +61,69 @@ func newBench(t *testing.T, s setup) *bench {
 	return b
 }
 
-// settle runs what the session posts until it has judged the plan.
+// settle runs what the session and the easel post until the plan is judged and the
+// pictures are drawn.
 func (b *bench) settle() {
 	b.Helper()
-	deadline := time.After(20 * time.Second)
-	for {
+	b.until("judged and drawn", func() bool {
+		s := b.window.state
+		return !s.Busy && !s.Stale && b.window.easel.idle()
+	})
+}
+
+// settleJobs also waits for what the pages compute.
+func (b *bench) settleJobs() {
+	b.Helper()
+	b.settle()
+	b.until("computed", func() bool {
+		for _, job := range b.window.desk.State().Jobs {
+			if job.Running {
+				return false
+			}
+		}
+		return b.window.easel.idle() && b.ceilingPage().room.timer == nil
+	})
+	b.window.Echo()
+	b.settle()
+}
+
+// until runs what is posted until a condition holds and nothing waits.
+func (b *bench) until(what string, ok func() bool) {
+	b.Helper()
+	deadline := time.Now().Add(20 * time.Second)
+	for time.Now().Before(deadline) {
 		select {
 		case f := <-b.queue:
 			f()
 			continue
 		default:
 		}
-		if s := b.window.state; !s.Busy && !s.Stale {
+		if ok() {
 			return
 		}
 		select {
 		case f := <-b.queue:
 			f()
-		case <-deadline:
-			b.Fatalf("not judged within 20 s: %+v", b.window.state.Failure)
+		case <-time.After(2 * time.Millisecond):
 		}
 	}
+	b.Fatalf("not %s within 20 s: %+v", what, b.window.state.Failure)
+}
+
+// turnTo turns to a page and waits for its pictures.
+func (b *bench) turnTo(name string) {
+	b.Helper()
+	b.window.choosePage(b.window.pageNamed(name))
+	b.settle()
+}
+
+// ceilingPage and latticePage are pages of the window.
+func (b *bench) ceilingPage() *CeilingPage {
+	return b.window.pages[b.window.pageNamed("Ceiling")].(*CeilingPage)
+}
+
+func (b *bench) latticePage() *LatticePage {
+	return b.window.pages[b.window.pageNamed("Lattice")].(*LatticePage)
 }
 
 // canvas is that of the window.

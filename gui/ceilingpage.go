@@ -3,21 +3,23 @@ package gui
 import (
 	"slices"
 
-	"fyne.io/fyne/v2"
-
+	"hilltop/bosehubbard/report"
 	"hilltop/gui/session"
 )
 
-// CeilingPage shows what bounds the energy: the criteria with their margins and
-// what mends a broken one, the terms with floor and ceiling, and the stages.
+// CeilingPage shows what bounds the energy: the picture of the bounds, the criteria
+// with their margins and what mends a broken one, the terms with floor and ceiling,
+// and the stages. On demand it shows how far every knob may go and the map of the
+// verdict.
 type CeilingPage struct {
-	tools    pageTools
-	sentence *Prose
+	plotPage
+	picture  *Plot
 	criteria *Column
 	rows     []*CriterionRow
 	terms    *Grid
 	stages   *Grid
-	scroller *Scroller
+	room     *roomPart
+	verdicts *mapPart
 
 	termIDs     []string // of the rows of terms
 	stageIDs    []int    // of the rows of stages
@@ -27,20 +29,44 @@ type CeilingPage struct {
 var _ Page = (*CeilingPage)(nil)
 
 func newCeilingPage(tools pageTools) *CeilingPage {
-	p := &CeilingPage{tools: tools, sentence: NewProse("", textSentence, 0).bold(), criteria: NewColumn(0, 0)}
+	p := &CeilingPage{criteria: NewColumn(0, 0)}
+	p.begin(tools, func() { p.Show(p.state) })
+	p.picture = p.plot("Ceiling of the energy", p.pictureHeight)
 	p.terms = NewGrid(p.explainTerm)
 	p.terms.OnKey = tools.key
 	p.stages = NewGrid(p.stageCell)
 	p.stages.OnKey = tools.key
-	p.scroller = NewScroller(NewColumn(space12, space16, p.sentence, p.criteria, p.terms, p.stages))
+	p.room = newRoomPart(tools)
+	p.verdicts = newMapPart(p)
+	room := p.detail("room of every knob", p.room.body)
+	chart := p.detail("map of the verdict over U and V", p.verdicts.body)
+	p.room.detail, p.verdicts.detail = room, chart
+	p.assemble(p.picture, p.criteria, room, chart, p.terms, p.stages)
 	return p
+}
+
+// Heights of the picture at 100 % text, and what stands around it on a page that is
+// too low for it.
+const (
+	ceilingHeight        = 372 + 40 // the frame, then the line of sizes
+	ceilingHeightCompact = 328 + 40
+	leastCeiling         = 300
+	aroundCeiling        = 120
+)
+
+func (p *CeilingPage) pictureHeight(width float32) float32 {
+	high := px(ceilingHeightCompact)
+	if width >= px(widePage)-2*px(space16) {
+		high = px(ceilingHeight)
+	}
+	if textScale() > 1 {
+		high = min(high, p.roomInSight()-px(aroundCeiling))
+	}
+	return max(high, px(leastCeiling))
 }
 
 // Name is that of the page.
 func (p *CeilingPage) Name() string { return "Ceiling" }
-
-// Object is the page.
-func (p *CeilingPage) Object() fyne.CanvasObject { return p.scroller }
 
 // KeyNumber is the bound that counts, per atom.
 func (p *CeilingPage) KeyNumber(s session.State) string { return s.Keys.Ceiling }
@@ -71,22 +97,32 @@ func boundText(known, unbounded bool, hz float64) string {
 
 // Show shows a state.
 func (p *CeilingPage) Show(s session.State) {
-	p.sentence.Color = ColorInk
-	if s.Fading {
-		p.sentence.Color = ColorSoftInk
-	}
-	p.sentence.SetText(p.title(s))
-	for _, o := range []fyne.CanvasObject{p.criteria, p.terms, p.stages} {
+	p.prepare(s)
+	p.say(s, p.title(s))
+	p.empty("")
+	for _, o := range p.shown {
 		show(o, s.Report != nil)
 	}
-	if s.Report != nil {
-		p.showCriteria(s)
-		p.showTerms(s)
-		p.showStages(s)
+	if s.Report == nil {
+		p.picture.Clear()
+		p.fit()
+		return
 	}
+	report, axes := s.Report, session.LatticeAxes(s.Plan)
+	p.picture.Draw(ceilingKey{s.Judged}, func(*session.Artist) (subject, error) {
+		return &ceilingSubject{report: report, axes: axes}, nil
+	})
+	p.room.Set(s)
+	p.verdicts.Set(s)
+	p.showCriteria(s)
+	p.showTerms(s)
+	p.showStages(s)
 	p.criteria.Refresh()
-	p.scroller.Fit()
+	p.fit()
 }
+
+// ceilingKey is what the picture depends on.
+type ceilingKey struct{ judged uint64 }
 
 // title says at which stage the energy is bounded and by what.
 func (p *CeilingPage) title(s session.State) string {
@@ -113,8 +149,9 @@ func (p *CeilingPage) showCriteria(s session.State) {
 	for len(p.rows) < len(list) {
 		p.rows = append(p.rows, newCriterionRow(p.tools))
 	}
+	first, words := p.room.first(s)
 	p.criteria.Objects = p.criteria.Objects[:0]
-	for i, c := range list {
+	for i, c := range ordered(list, first) {
 		shown := criterion{name: c.Name, detail: minusSigns(c.Detail), margin: quantity(c.Margin, c.Unit), verdict: sealed, floor: isFloor(s), stale: s.Fading}
 		if !c.Passed {
 			shown.verdict = c.Breaks
@@ -122,9 +159,28 @@ func (p *CeilingPage) showCriteria(s session.State) {
 				p.rows[i].advice, shown.mend = advice, advice.Text
 			}
 		}
+		if c.Name == first {
+			shown.first = words
+		}
 		p.rows[i].set(shown)
 		p.criteria.Objects = append(p.criteria.Objects, p.rows[i])
 	}
+}
+
+// ordered puts the broken criteria first, then the one that breaks first.
+func ordered(list []report.Criterion, first string) []report.Criterion {
+	place := func(c report.Criterion) int {
+		switch {
+		case !c.Passed:
+			return 0
+		case c.Name == first:
+			return 1
+		}
+		return 2
+	}
+	sorted := slices.Clone(list)
+	slices.SortStableFunc(sorted, func(a, b report.Criterion) int { return place(a) - place(b) })
+	return sorted
 }
 
 var termColumns = []GridColumn{{"Term, per atom", true}, {"Floor", false}, {"Ceiling", false}, {"", true}}

@@ -107,12 +107,16 @@ func NewScroller(column *Column) *Scroller {
 // Scrolled moves the content, as the wheel over it does.
 func (s *Scroller) Scrolled(e *fyne.ScrollEvent) { s.scroll.Scrolled(e) }
 
-// Fit lays the column out anew after its height has changed.
+// Fit lays the column out anew after something in it has changed. What stays as high
+// as it was is not drawn anew.
 func (s *Scroller) Fit() {
+	before := s.Column.Size()
 	s.Column.layout.width = s.Size().Width
 	s.Column.Resize(fyne.NewSize(s.Size().Width, max(s.Size().Height, s.Column.HeightFor(s.Size().Width))))
 	s.Column.layout.Layout(s.Column.Objects, s.Column.Size())
-	s.scroll.Refresh()
+	if s.Column.Size() != before {
+		s.scroll.Refresh()
+	}
 }
 
 // Reveal scrolls so that an object of the column is in sight.

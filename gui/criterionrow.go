@@ -39,6 +39,7 @@ type criterion struct {
 	name, detail, margin, verdict string
 	floor, stale                  bool
 	mend                          string // on the button; "" for none
+	first                         string // which knob breaks it before all others; "" for none
 }
 
 // set shows a criterion.
@@ -54,9 +55,12 @@ func (r *CriterionRow) set(c criterion) {
 	}
 	r.name.Color, r.margin.text.Color = ink, ink
 	r.name.Text = screenName(c.name)
-	r.name.Bold = c.verdict != sealed
+	r.name.Bold = c.verdict != sealed || c.first != ""
 	r.margin.Set(c.margin, c.name)
-	r.detail.Text = c.detail
+	r.detail.Text, r.detail.Color = c.detail, ColorSoftInk
+	if c.first != "" {
+		r.detail.Text, r.detail.Color = c.first, ink
+	}
 	show(r.button, c.mend != "")
 	r.button.SetText(c.mend)
 	r.Refresh()
@@ -150,7 +154,11 @@ func (r *CriterionRow) paint(size fyne.Size) []fyne.CanvasObject {
 	r.button.Resize(fyne.NewSize(min(px(mendWide), size.Width-at.X), button))
 	r.detail.Move(fyne.NewPos(p.left, top+(high-p.detail)/2))
 	r.detail.Resize(fyne.NewSize(p.room, p.detail))
-	return []fyne.CanvasObject{r.mark, r.name, r.margin, r.detail, r.button}
+	parts := []fyne.CanvasObject{r.mark, r.name, r.margin, r.detail, r.button}
+	if r.shown != nil && r.shown.first != "" {
+		parts = append([]fyne.CanvasObject{filled(fyne.Position{}, size, ColorPanel)}, parts...)
+	}
+	return parts
 }
 
 // placeHead places mark, name and margin in the middle of a height.

@@ -5,6 +5,7 @@ import (
 	"image/png"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
 
 	"hilltop/bosehubbard/plan"
@@ -60,9 +61,9 @@ func TestGoldenPictures(t *testing.T) {
 		setup
 		drawer bool
 	}{
-		{"full-light", setup{width: 1280, height: 600}, false},
-		{"full-dark", setup{width: 1280, height: 600, variant: Dark}, false},
-		{"compact-light", setup{width: 1024, height: 600}, false},
+		{"full-light", setup{width: 1280, height: 900}, false},
+		{"full-dark", setup{width: 1280, height: 900, variant: Dark}, false},
+		{"compact-light", setup{width: 1024, height: 900}, false},
 		{"drawer-dark", setup{width: 1024, height: 600, variant: Dark, scale: 1.5}, true},
 	} {
 		b := newBench(t, tc.setup)
@@ -70,8 +71,25 @@ func TestGoldenPictures(t *testing.T) {
 		b.window.column.atHand = "depth_er/0"
 		b.window.Show(leakyState())
 		b.window.arrange()
+		b.settle()
 		b.checkLayout(tc.name)
 		b.golden(tc.name)
+	}
+}
+
+// The pages with pictures of the demo: numbers change with the physics, and then
+// these pictures do.
+func TestGoldenPages(t *testing.T) {
+	for _, tc := range []struct {
+		page string
+		setup
+	}{
+		{"Bench", setup{width: 1280, height: 768}},
+		{"Lattice", setup{width: 1024, height: 648, variant: Dark}},
+	} {
+		b := newBench(t, tc.setup)
+		b.turnTo(tc.page)
+		b.golden("page-" + strings.ToLower(tc.page))
 	}
 }
 

@@ -12,6 +12,8 @@ func (w *Window) key(e *fyne.KeyEvent) {
 		w.showCautions()
 	case fyne.KeyF2:
 		w.toggleDrawer()
+	case fyne.KeyF6:
+		w.readPicture()
 	case fyne.KeyEscape:
 		w.escape()
 	}

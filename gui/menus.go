@@ -27,7 +27,7 @@ type menuWords struct {
 // buildMenu makes the menu bar. Every action of the window has an item, so that a
 // field with the focus cannot swallow its shortcut.
 func (w *Window) buildMenu() {
-	w.menu.bar = fyne.NewMainMenu(w.fileMenu(), w.editMenu(), w.viewMenu(), w.stageMenu(), w.helpMenu())
+	w.menu.bar = fyne.NewMainMenu(w.fileMenu(), w.editMenu(), w.viewMenu(), w.stageMenu(), w.pictureMenu(), w.helpMenu())
 	w.window.SetMainMenu(w.menu.bar)
 }
 

@@ -24,4 +24,7 @@ type pageTools struct {
 	apply   func(session.Advice)
 	echo    func() // the session has taken an action
 	key     func(*fyne.KeyEvent)
+	turnTo  func(page string)
+	goTo    func(stage int, field string) // leads to a knob
+	plots   plotTools
 }

@@ -17,7 +17,7 @@ type Options struct {
 	Size      fyne.Size
 	Variant   Variant      // "" for what was chosen last
 	TextScale float32      // 0 for what was chosen last
-	Page      string       // name of the page to begin with; "" for the first
+	Page      string       // name of the page to begin with; "" for Ceiling
 	Folder    string       // for recovery and recent files; "" for none
 	Post      func(func()) // nil for [Post]
 }
@@ -49,6 +49,8 @@ type Window struct {
 	status     *StatusLine
 	content    *fyne.Container
 	menu       menus
+	easel      *easel
+	atHand     *Plot // the plot that had the focus last; nil for none
 }
 
 // New opens a window of an application and shows a plan. Run the application, and
@@ -59,6 +61,7 @@ func New(app fyne.App, opt Options) *Window {
 	if opt.Post == nil {
 		opt.Post = Post
 	}
+	w.easel = newEasel(opt.Post)
 	w.desk = session.New(session.Options{Post: opt.Post, Show: w.Show, Folder: opt.Folder})
 	w.build()
 	w.window.SetIcon(fyne.NewStaticResource("icon.png", assets.Icon()))
@@ -86,10 +89,12 @@ func (w *Window) build() {
 	w.drawer.OnKey = w.key
 	w.strip = NewStrip(w.arrange)
 	w.status = NewStatusLine(func() { w.desk.Stop(); w.Echo() })
-	tools := pageTools{desk: w.desk, explain: w.explain, apply: w.apply, echo: w.Echo, key: w.key}
-	w.pages = []Page{newCeilingPage(tools)}
+	tools := pageTools{desk: w.desk, explain: w.explain, apply: w.apply, echo: w.Echo, key: w.key,
+		turnTo: func(page string) { w.choosePage(w.pageNamed(page)) }, goTo: w.goTo,
+		plots: plotTools{easel: w.easel, key: w.key, focus: w.window.Canvas().Focus, chosen: func(p *Plot) { w.atHand = p }, save: w.savePlot}}
+	w.pages = []Page{newBenchPage(tools), newLatticePage(tools), newCeilingPage(tools)}
 	w.places = NewPageSwitch(w.choosePage, w.key)
-	w.sheet = container.NewStack()
+	w.sheet = container.NewStack(newGround())
 	for _, p := range w.pages {
 		w.sheet.Add(p.Object())
 	}
@@ -145,14 +150,29 @@ func (w *Window) choosePage(i int) {
 	w.showPages()
 }
 
-// pageNamed returns the index of a page, 0 for a name that no page has.
+// pageNamed returns the index of a page, that of Ceiling for a name that no page
+// has.
 func (w *Window) pageNamed(name string) int {
+	ceiling := 0
 	for i, p := range w.pages {
-		if p.Name() == name {
+		switch p.Name() {
+		case name:
 			return i
+		case "Ceiling":
+			ceiling = i
 		}
 	}
-	return 0
+	return ceiling
+}
+
+// goTo leads to a knob.
+func (w *Window) goTo(stage int, field string) {
+	w.desk.SelectStage(stage)
+	w.Echo()
+	if w.metrics.Fold == drawerFold && !w.drawerOpen {
+		w.toggleDrawer()
+	}
+	w.column.Reveal(field)
 }
 
 // apply takes an advice and leads to the field it changes.
@@ -192,4 +212,7 @@ func (w *Window) explain(topic string) {
 func (w *Window) Native() fyne.Window { return w.window }
 
 // Close ends the work behind the window, and waits for it.
-func (w *Window) Close() { w.desk.Close() }
+func (w *Window) Close() {
+	w.easel.close()
+	w.desk.Close()
+}

@@ -30,8 +30,12 @@ func TestNoLabelIsCutOrOverlaps(t *testing.T) {
 			t.Run(look.String()+"-"+plan, func(t *testing.T) {
 				look.plan = plan
 				b := newBench(t, look)
-				b.keep(look.String() + "-" + plan)
-				b.checkLayout("as opened")
+				for _, page := range b.window.pages {
+					b.turnTo(page.Name())
+					b.settleJobs()
+					b.keep(look.String() + "-" + plan + "-" + page.Name())
+					b.checkLayout(page.Name() + " as opened")
+				}
 				b.edge()
 				b.keep(look.String() + "-" + plan + "-edge")
 				b.checkLayout("with a refused text, a slider and the strip")

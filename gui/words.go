@@ -47,8 +47,9 @@ func quantity(v float64, unit string) string {
 }
 
 // minusSigns puts a true minus sign before every number of a text that has a
-// hyphen there.
+// hyphen there, and prints its units.
 func minusSigns(text string) string {
+	text = strings.ReplaceAll(text, "Hz/site2", unitNames["Hz/site2"])
 	var b strings.Builder
 	previous := ' '
 	runes := []rune(text)

@@ -27,6 +27,7 @@ type KnobRoom struct {
 type KnobLimit struct {
 	Found   bool
 	Value   string  // with unit
+	Change  string  // "−23 %"
 	Part    float64 // of the value, how far away: 0.25 for 20 to 25 mW
 	Breaks  string  // name of the criterion that decides there; "" where sealed
 	Verdict string
@@ -157,6 +158,7 @@ func (r *roomSearch) narrow(ctx context.Context, e entry, inside, outside float6
 	}
 	found.Part = math.Abs(outside-e.value) / math.Abs(e.value)
 	found.Value = withUnit(e.measure.formatDigits(outside, e.Unit, 4), e.Unit)
+	found.Change = withUnit(signed(Digits(math.Copysign(100*found.Part, outside-e.value), 2)), "%")
 	return found, nil
 }
 
