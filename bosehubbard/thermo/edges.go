@@ -15,11 +15,19 @@ const (
 	edgeSteps  = 120  // of the first run in search of levels
 )
 
+// side is an end of a spectrum.
+type side int
+
+const (
+	bottom side = iota
+	top
+)
+
 // edge is a level near an end of the spectrum of one sector.
 type edge struct {
 	energy float64   // Hz
-	vector []float64 // of unit length
-	top    bool      // near the highest
+	vector []float64 // of unit length; nil if only the level is wanted
+	side   side
 }
 
 func (e *ensemble) edgeCount() int {
@@ -80,15 +88,13 @@ func (s *edgeSearch) round(ctx context.Context, round int) (found []edge, again 
 		if err != nil {
 			return nil, false, fmt.Errorf("thermo: %w", err)
 		}
-		picks, again, ends := s.choose(t, &rule)
-		if ends < 2 && round == 0 && steps < mostRuleSteps {
+		low, lowAgain := s.choose(t, &rule, bottom)
+		high, highAgain := s.choose(t, &rule, top)
+		if (len(low) == 0 || len(high) == 0) && round == 0 && steps < mostRuleSteps {
 			continue
 		}
-		if len(picks) == 0 {
-			return nil, false, nil
-		}
-		found, err = s.rebuild(ctx, round, steps, &rule, picks)
-		return found, again, err
+		found, err = s.rebuild(ctx, round, steps, append(low, high...))
+		return found, lowAgain || highAgain, err
 	}
 }
 
@@ -104,56 +110,54 @@ func (s *edgeSearch) lanczos(ctx context.Context, round, steps int, visit func(s
 	return &t[0], err
 }
 
-// pick is a node of a rule taken for a level.
+// pick is a level taken from a rule.
 type pick struct {
-	node int
-	top  bool
+	side  side
+	parts []float64 // components of its vector on the Lanczos vectors
 }
 
-// choose picks the nodes that have converged from both ends inwards and counts the
-// ends that have any. A node next to the one before is a copy that rounding made.
-// A node next to the end found before is that end again, and picked alone.
-func (s *edgeSearch) choose(t *quadrature.Tridiagonal, rule *quadrature.Rule) (picks []pick, again bool, ends int) {
-	last := len(rule.Node) - 1
-	near := nearLevels * (rule.Node[last] - rule.Node[0])
-	low := 0
-	for _, top := range []bool{false, true} {
-		had, most := s.have(top), s.opt.Levels
-		before := math.Inf(1)
-		taken := 0
-		for n := low; n <= last && taken < min(most, 2*s.opt.Levels-had); n++ {
-			k := n
-			if top {
-				k = last - (n - low)
-			}
-			if t.Residual(rule, k) > near {
-				break
-			}
-			if math.Abs(rule.Node[k]-before) <= near {
-				continue
-			}
-			if taken == 0 && had > 0 && math.Abs(rule.Node[k]-s.extreme(top)) <= near {
-				again, most = true, 1
-			}
-			before = rule.Node[k]
-			picks = append(picks, pick{k, top})
-			taken++
-			if !top {
-				low = k + 1
-			}
+// choose picks the levels that have converged at one end, from there inwards; again
+// says that the end found before turned up once more, and it is then picked alone.
+// Nodes that lie together are one level: rounding makes copies. A level picked at
+// both ends is found once by rebuild.
+func (s *edgeSearch) choose(t *quadrature.Tridiagonal, rule *quadrature.Rule, at side) (picks []pick, again bool) {
+	m := len(rule.Node)
+	near := nearLevels * (rule.Node[m-1] - rule.Node[0])
+	had := s.have(at)
+	most := min(s.opt.Levels, 2*s.opt.Levels-had)
+	for begin, end := 0, 0; begin < m && len(picks) < most; begin = end {
+		for end = begin; end < m && math.Abs(node(rule, end, at)-node(rule, begin, at)) <= near; end++ {
 		}
-		if taken > 0 {
-			ends++
+		from, to := begin, end // begin and end count from this side
+		if at == top {
+			from, to = m-end, m-begin
+		}
+		p := pick{side: at, parts: make([]float64, m)}
+		rule.PartTo(p.parts, from, to)
+		if t.Next(m)*math.Abs(p.parts[m-1]) > near {
+			break
+		}
+		picks = append(picks, p)
+		if begin == 0 && had > 0 && math.Abs(node(rule, 0, at)-s.extreme(at)) <= near {
+			return picks, true
 		}
 	}
-	return picks, again, ends
+	return picks, false
+}
+
+// node counts nodes from one side.
+func node(rule *quadrature.Rule, k int, at side) float64 {
+	if at == top {
+		k = len(rule.Node) - 1 - k
+	}
+	return rule.Node[k]
 }
 
 // have counts the levels found at an end.
-func (s *edgeSearch) have(top bool) int {
+func (s *edgeSearch) have(at side) int {
 	n := 0
 	for _, level := range s.found {
-		if level.top == top {
+		if level.side == at {
 			n++
 		}
 	}
@@ -161,13 +165,10 @@ func (s *edgeSearch) have(top bool) int {
 }
 
 // extreme returns the outermost energy found at an end.
-func (s *edgeSearch) extreme(top bool) float64 {
-	energy := math.Inf(1)
-	if top {
-		energy = math.Inf(-1)
-	}
+func (s *edgeSearch) extreme(at side) float64 {
+	energy := s.found[0].energy
 	for _, level := range s.found {
-		if top {
+		if at == top {
 			energy = max(energy, level.energy)
 		} else {
 			energy = min(energy, level.energy)
@@ -177,17 +178,18 @@ func (s *edgeSearch) extreme(top bool) float64 {
 }
 
 // rebuild adds up the vectors of the picks in a second run.
-func (s *edgeSearch) rebuild(ctx context.Context, round, steps int, rule *quadrature.Rule, picks []pick) ([]edge, error) {
-	length := s.sectors[s.sector].Len()
-	found, parts := make([]edge, len(picks)), newRows(len(picks), len(rule.Node))
+func (s *edgeSearch) rebuild(ctx context.Context, round, steps int, picks []pick) ([]edge, error) {
+	if len(picks) == 0 {
+		return nil, nil
+	}
+	found := make([]edge, len(picks))
 	for n, p := range picks {
-		found[n] = edge{vector: make([]float64, length), top: p.top}
-		rule.VectorTo(parts[n], p.node)
+		found[n] = edge{vector: make([]float64, s.sectors[s.sector].Len()), side: p.side}
 	}
 	_, err := s.lanczos(ctx, round, steps, func(step int, v [][]float64) error {
 		for n := range found {
-			if step < len(parts[n]) {
-				floats.AddScaled(found[n].vector, parts[n][step], v[0])
+			if step < len(picks[n].parts) {
+				floats.AddScaled(found[n].vector, picks[n].parts[step], v[0])
 			}
 		}
 		return ctx.Err()

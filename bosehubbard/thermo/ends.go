@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
 	"slices"
 
 	"hilltop/bosehubbard/num/blocks"
@@ -45,10 +46,14 @@ func (s *space) sectorEnds(ctx context.Context, i, lane int, seed uint64) (low, 
 		if err != nil {
 			return 0, 0, fmt.Errorf("thermo: %w", err)
 		}
-		last := len(rule.Node) - 1
-		low, high = rule.Node[0], rule.Node[last]
-		worst := max(run[0].Residual(&rule, 0), run[0].Residual(&rule, last))
-		if worst <= roughResidual*(high-low) || last+1 < steps || steps >= mostSteps {
+		m := len(rule.Node)
+		low, high = rule.Node[0], rule.Node[m-1]
+		worst, y := 0.0, make([]float64, m)
+		for _, k := range []int{0, m - 1} {
+			rule.PartTo(y, k, k+1)
+			worst = max(worst, run[0].Next(m)*math.Abs(y[m-1]))
+		}
+		if worst <= roughResidual*(high-low) || m < steps || steps >= mostSteps {
 			return low, high, nil
 		}
 	}

@@ -47,7 +47,7 @@ func (l Levels) Judge(energy float64, sign int) (LevelJudgement, error) {
 		j.breaks("open", "the levels go on upwards without end, so nothing bounds the energy above")
 	}
 	if !(state.Beta*float64(sign) > 0) {
-		j.breaks("astray", fmt.Sprintf("beta is %.4g per Hz at %g Hz per body, want it %s", state.Beta, energy, side(sign)))
+		j.breaks("astray", fmt.Sprintf("beta is %.4g per Hz at %g Hz per body, want it %s", state.Beta, energy, wanted(sign)))
 	}
 	if !(j.TimeRatio >= MinTimeRatio) {
 		j.breaks("leaky", fmt.Sprintf("the outer time is %.3g inner times, want at least %d", j.TimeRatio, MinTimeRatio))
@@ -63,7 +63,7 @@ func (j *LevelJudgement) breaks(verdict, reason string) {
 	j.Reasons = append(j.Reasons, reason)
 }
 
-func side(sign int) string {
+func wanted(sign int) string {
 	if sign < 0 {
 		return "below 0"
 	}

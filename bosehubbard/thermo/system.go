@@ -74,8 +74,12 @@ func (s System) halves(ctx context.Context, r resources) (*space, error) {
 	})
 }
 
-// fit builds the space of given parities with as many lanes as the memory allows.
-// Those that do not fit work within the others.
+// share is the length of vector that is worth another goroutine on one vector. Two
+// on one touch half the memory of two on two, and never wait long for each other.
+const share = 1 << 15
+
+// fit builds the space of given parities, with goroutines that share long vectors
+// and lanes for those that are left, as many as the memory allows.
 func (s System) fit(ctx context.Context, r resources, parities func(*fock.Terms) []int) (*space, error) {
 	if s.Lattice == nil {
 		return nil, errors.New("thermo: a system without a lattice")
@@ -96,6 +100,7 @@ func (s System) fit(ctx context.Context, r resources, parities func(*fock.Terms)
 		if err != nil {
 			return nil, fmt.Errorf("thermo: %w", err)
 		}
+		lanes = min(lanes, max(1, wanted/max(1, sp.length/share)))
 		sp.open(lanes, r.vectors, wanted/lanes)
 		return sp, nil
 	}

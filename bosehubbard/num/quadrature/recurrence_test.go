@@ -192,6 +192,52 @@ func TestRunToTheEnd(t *testing.T) {
 	}
 }
 
+// The part of the start on an end node is the eigenvector once Next times its last
+// component is small, and that product is the residual before.
+func TestPartAndResidual(t *testing.T) {
+	random := rand.New(rand.NewPCG(8, 0))
+	const n = 60
+	values := make([]float64, n)
+	for i := range values {
+		values[i] = float64(i * i)
+	}
+	for _, m := range []int{10, 25, 45} {
+		var krylov [][]float64
+		run, norms := make([]Tridiagonal, 1), make([]float64, 1)
+		r := Recurrence{Product: dense(mat.NewDiagDense(n, values)), Steps: m, Visit: func(_ int, v [][]float64) error {
+			krylov = append(krylov, slices.Clone(v[0]))
+			return nil
+		}}
+		if err := r.Run(run, norms, randomGroup(random, 1, n), empty(1, n)); err != nil {
+			t.Fatal(err)
+		}
+		rule, err := run[0].Rule(m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		// late in the run rounding makes copies of the top
+		top := rule.Node[m-1]
+		from := m - 1
+		for from > 0 && top-rule.Node[from-1] < 1e-6*top {
+			from--
+		}
+		parts, x, residual := make([]float64, m), make([]float64, n), 0.0
+		rule.PartTo(parts, from, m)
+		for j, c := range parts {
+			floats.AddScaled(x, c, krylov[j])
+		}
+		for i := range x {
+			residual = math.Hypot(residual, (values[i]-top)*x[i])
+		}
+		if norm := floats.Norm(x, 2); math.Abs(norm-1) > 1e-6 {
+			t.Errorf("%d steps: the part has length %g, want 1", m, norm)
+		}
+		if want := run[0].Next(m) * math.Abs(parts[m-1]); math.Abs(residual-want) > 1e-3*want+1e-9*top {
+			t.Errorf("%d steps: residual %.4g, want %.4g", m, residual, want)
+		}
+	}
+}
+
 // Neither the group nor the workers change a bit.
 func TestRunIsTheSameForAnyWorkers(t *testing.T) {
 	random := rand.New(rand.NewPCG(3, 0))
@@ -265,6 +311,7 @@ func TestRunErrors(t *testing.T) {
 		"no vectors": func() { _ = r.Run(nil, nil, nil, nil) },
 		"no matrix":  func() { _, _ = (&Tridiagonal{}).Rule(3) },
 		"lengths":    func() { rule.CoefficientsTo(make([]float64, 2), make([]float64, 1)) },
+		"no node":    func() { rule.PartTo(make([]float64, 1), 1, 1) },
 	} {
 		func() {
 			defer func() {

@@ -64,29 +64,42 @@ func (t *Tridiagonal) Rule(m int) (Rule, error) {
 	return r, nil
 }
 
-// Residual returns |A x - Node[k] x| of the unit vector x = sum_j v_j vectors[j,k]
-// of a rule of this matrix: an eigenvalue lies within it. It is 0 if the run ended.
+// Next returns the coupling to the step after the first m, 0 if the run ended
+// there. For a unit vector with components y on the first m Lanczos vectors that is
+// an eigenvector of T, the residual |A x - node x| is Next(m) |y_(m-1)|, and an
+// eigenvalue lies within it.
 //
-// It panics if k is not a node.
+// It panics if m is below 1 or above the length of the run.
 //
 // Source: Parlett, The Symmetric Eigenvalue Problem (1980), from memory.
-func (t *Tridiagonal) Residual(r *Rule, k int) float64 {
-	m := len(r.Node)
-	if m > len(t.Coupling) {
+func (t *Tridiagonal) Next(m int) float64 {
+	if m == len(t.Coupling)+1 && m == len(t.Diagonal) {
 		return 0
 	}
-	return t.Coupling[m-1] * math.Abs(r.vectors[(m-1)*m+k])
+	return t.Coupling[m-1]
 }
 
-// VectorTo writes the components of the unit vector of node k on the Lanczos
-// vectors to dst. It panics if dst has not the length of the rule.
-func (r *Rule) VectorTo(dst []float64, k int) {
+// PartTo writes the components, on the Lanczos vectors, of the part of the start
+// vector that lies on the nodes from to to-1, scaled to length 1. Nodes that lie
+// together because of rounding make one part, whose vector is well defined.
+//
+// It panics if dst has not the length of the rule or there is no such node.
+func (r *Rule) PartTo(dst []float64, from, to int) {
 	m := len(r.Node)
-	if len(dst) != m {
-		panic(fmt.Sprintf("quadrature: %d components, want %d", len(dst), m))
+	if len(dst) != m || from < 0 || from >= to || to > m {
+		panic(fmt.Sprintf("quadrature: %d components of nodes %d to %d, want %d of some", len(dst), from, to-1, m))
 	}
+	norm := 0.0
+	for _, w := range r.Weight[from:to] {
+		norm += w
+	}
+	norm = math.Sqrt(norm)
 	for j := range dst {
-		dst[j] = r.vectors[j*m+k]
+		sum := 0.0
+		for k := from; k < to; k++ {
+			sum += r.first[k] / norm * r.vectors[j*m+k]
+		}
+		dst[j] = sum
 	}
 }
 
