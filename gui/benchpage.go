@@ -34,10 +34,8 @@ func newBenchPage(tools pageTools) *BenchPage {
 	p.begin(tools, func() { p.Show(p.state) })
 	p.budget = p.plot("Trap, who adds what", p.budgetHeight)
 	p.scattering = p.plot("Scattering length against field", p.pictureHeight)
-	p.gravity = NewGrid(func(row, _ int) { tools.explain(p.topics[row]) })
-	p.gravity.OnKey = tools.key
-	p.sources = NewGrid(func(int, int) {})
-	p.sources.OnKey = tools.key
+	p.gravity = p.grid(func(row, _ int) { tools.explain(p.topics[row]) })
+	p.sources = p.grid(func(int, int) {})
 	p.assemble(NewPair(p.budget, p.scattering),
 		p.detail("sag and tilt", p.gravity), p.detail("sources of the numbers", p.sources))
 	return p

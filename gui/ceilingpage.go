@@ -32,11 +32,9 @@ func newCeilingPage(tools pageTools) *CeilingPage {
 	p := &CeilingPage{criteria: NewColumn(0, 0)}
 	p.begin(tools, func() { p.Show(p.state) })
 	p.picture = p.plot("Ceiling of the energy", p.pictureHeight)
-	p.terms = NewGrid(p.explainTerm)
-	p.terms.OnKey = tools.key
-	p.stages = NewGrid(p.stageCell)
-	p.stages.OnKey = tools.key
-	p.room = newRoomPart(tools)
+	p.terms = p.grid(p.explainTerm)
+	p.stages = p.grid(p.stageCell)
+	p.room = newRoomPart(p)
 	p.verdicts = newMapPart(p)
 	room := p.detail("room of every knob", p.room.body)
 	chart := p.detail("map of the verdict over U and V", p.verdicts.body)
@@ -147,7 +145,10 @@ func (p *CeilingPage) title(s session.State) string {
 func (p *CeilingPage) showCriteria(s session.State) {
 	list := s.Report.Ceiling.Criteria
 	for len(p.rows) < len(list) {
-		p.rows = append(p.rows, newCriterionRow(p.tools))
+		row := newCriterionRow(p.tools)
+		p.follow(&row.margin.control, row)
+		p.follow(&row.button.control, row)
+		p.rows = append(p.rows, row)
 	}
 	first, words := p.room.first(s)
 	p.criteria.Objects = p.criteria.Objects[:0]

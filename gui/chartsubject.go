@@ -3,6 +3,7 @@ package gui
 import (
 	"math"
 	"slices"
+	"strings"
 
 	"hilltop/bosehubbard/figure"
 )
@@ -92,7 +93,7 @@ func (g *curveGuide) read(p figure.Point) (reading, bool) {
 		return reading{}, false
 	}
 	if r, ok := g.chart.Nearest(g.Area, p, reach); ok {
-		return reading{at: r.At, text: r.Text, curve: -1}, true
+		return reading{at: r.At, text: named(r), curve: -1}, true
 	}
 	r := g.Read(p)
 	return reading{at: r.At, text: r.Text, curve: -1}, true
@@ -114,7 +115,15 @@ func (g *curveGuide) at(curve, point int) (reading, bool) {
 	alone := *g.chart
 	alone.Curves = g.chart.Curves[curve : curve+1]
 	r, ok := alone.Nearest(g.Area, p, 1)
-	return reading{at: p, text: r.Text, curve: curve, point: point}, ok
+	return reading{at: p, text: named(r), curve: curve, point: point}, ok
+}
+
+// named puts a colon behind the name of the curve.
+func named(r figure.Reading) string {
+	if text, ok := strings.CutPrefix(r.Text, r.Curve+" "); ok && r.Curve != "" {
+		return r.Curve + ": " + text
+	}
+	return r.Text
 }
 
 // led lists the curves that the keys lead along: those with a name, for the others

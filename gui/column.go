@@ -136,6 +136,12 @@ func (s *Scroller) Reveal(o fyne.CanvasObject) {
 	s.scroll.ScrollToOffset(offset)
 }
 
+// Begin scrolls so that an object of the column stands on top, as far as that goes.
+func (s *Scroller) Begin(o fyne.CanvasObject) {
+	lowest := max(s.Column.Size().Height-s.scroll.Size().Height, 0)
+	s.scroll.ScrollToOffset(fyne.NewPos(0, min(max(o.Position().Y-px(s.Column.layout.pad), 0), lowest)))
+}
+
 // CreateRenderer implements [fyne.Widget].
 func (s *Scroller) CreateRenderer() fyne.WidgetRenderer {
 	s.ExtendBaseWidget(s)

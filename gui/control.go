@@ -9,7 +9,8 @@ import (
 // control is what the widgets share that take the focus, but no text.
 type control struct {
 	widget.BaseWidget
-	OnKey func(*fyne.KeyEvent) // takes the keys that the widget does not use; may be nil
+	OnKey   func(*fyne.KeyEvent) // takes the keys that the widget does not use; may be nil
+	OnFocus func()               // the widget has got the focus; may be nil
 
 	focused bool
 }
@@ -21,6 +22,9 @@ func (c *control) TypedRune(rune) {}
 func (c *control) FocusGained() {
 	c.focused = true
 	c.Refresh()
+	if c.OnFocus != nil {
+		c.OnFocus()
+	}
 }
 
 // FocusLost hides the focus.

@@ -96,7 +96,7 @@ func (w *Window) tellFailure() {
 	lines := append([]string{f.Reason, f.Cure}, f.Details...)
 	answers := []answer{{"Judge again", w.retry}, {"Close", nothing}}
 	if f.Field != "" {
-		answers = slices.Insert(answers, 1, answer{"Go to the value", func() { w.column.Reveal(f.Field) }})
+		answers = slices.Insert(answers, 1, answer{"Go to the value", func() { w.reveal(f.Field) }})
 	}
 	w.dialog("The plan could not be judged", strings.Join(lines, "\n"), answers)
 }

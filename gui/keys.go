@@ -2,6 +2,7 @@ package gui
 
 import (
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/driver/desktop"
 )
 
 // key takes the keys that nothing else in the window uses. Those that belong to a
@@ -14,6 +15,8 @@ func (w *Window) key(e *fyne.KeyEvent) {
 		w.toggleDrawer()
 	case fyne.KeyF6:
 		w.readPicture()
+	case desktop.KeyMenu:
+		w.menuAtHand()
 	case fyne.KeyEscape:
 		w.escape()
 	}

@@ -10,13 +10,15 @@ import (
 )
 
 // KnobColumn holds the stage rail, the knobs as they stand at the end of the
-// selected stage, and what else belongs to that stage.
+// selected stage, the wanted sign, and every other value of the plan in groups that
+// can be opened.
 type KnobColumn struct {
 	widget.BaseWidget
 	Metrics Metrics
 	On      ColumnEvents
 
 	desk     *session.Session
+	state    session.State // the one that is shown
 	rail     *Segmented
 	stops    []int // stages of the rail
 	heading  *Prose
@@ -24,8 +26,9 @@ type KnobColumn struct {
 	scroller *Scroller
 	rows     map[string]*KnobRow
 	choices  map[string]*choiceRow
-	order    []string
-	atHand   string // field whose slider is shown
+	sections map[string]*section // by the names of the groups
+	order    []string            // IDs of the fields that are shown
+	atHand   string              // field that had the focus last; its slider is shown
 }
 
 // ColumnEvents are what the column tells of. None may be nil.
@@ -42,7 +45,7 @@ var _ fyne.Widget = (*KnobColumn)(nil)
 // NewKnobColumn returns a column that edits the plan of a session.
 func NewKnobColumn(desk *session.Session, events ColumnEvents) *KnobColumn {
 	k := &KnobColumn{desk: desk, On: events, Metrics: metrics[fullFold],
-		rows: map[string]*KnobRow{}, choices: map[string]*choiceRow{}}
+		rows: map[string]*KnobRow{}, choices: map[string]*choiceRow{}, sections: map[string]*section{}}
 	k.rail = NewSegmented(func(i int) {
 		k.desk.SelectStage(k.stops[i])
 		k.On.Echo()
@@ -56,18 +59,12 @@ func NewKnobColumn(desk *session.Session, events ColumnEvents) *KnobColumn {
 	return k
 }
 
-// Set shows the knobs of a state.
+// Set shows the values of a state.
 func (k *KnobColumn) Set(s session.State) {
+	k.state = s
 	k.setRail(s)
 	k.heading.SetText(knobHeading(s))
-	fields := columnFields(s)
-	if order := fieldIDs(fields); !slices.Equal(order, k.order) {
-		k.order = order
-		k.rebuild(fields)
-	}
-	for _, f := range fields {
-		k.setField(f, s)
-	}
+	k.assemble()
 	k.scroller.Fit()
 }
 
@@ -98,45 +95,52 @@ func knobHeading(s session.State) string {
 	return ""
 }
 
-// columnFields are the knobs, what belongs to the selected stage, and the wanted
-// sign.
-func columnFields(s session.State) []session.Field {
-	fields := slices.Clone(s.Knobs)
-	for _, g := range s.Groups {
-		for _, f := range g.Fields {
-			if g.Name == "Stage" || f.ID == "/aim_sign" {
-				fields = append(fields, f)
-			}
-		}
-	}
-	return fields
-}
-
-func fieldIDs(fields []session.Field) []string {
-	ids := make([]string, len(fields))
-	for i, f := range fields {
-		ids[i] = f.ID
-	}
-	return ids
-}
-
-// rebuild puts the rows in order, keeping those that are there already.
-func (k *KnobColumn) rebuild(fields []session.Field) {
+// assemble puts what is to be seen in order, keeping what is there already.
+func (k *KnobColumn) assemble() {
+	k.order = k.order[:0]
 	objects := []fyne.CanvasObject{k.rail, k.heading}
-	for _, f := range fields {
-		if f.Kind == session.ChoiceField {
-			objects = append(objects, k.choice(f.ID))
-		} else {
-			objects = append(objects, k.row(f.ID))
-		}
+	for _, f := range k.state.Knobs {
+		objects = append(objects, k.show(f))
 	}
+	if aim, ok := k.state.Field(aimField); ok {
+		objects = append(objects, k.show(aim))
+	}
+	for _, g := range k.state.Groups {
+		objects = append(objects, k.assembleGroup(g)...)
+	}
+	if slices.Equal(objects, k.column.Objects) {
+		return
+	}
+	before := k.column.Objects
 	k.column.Objects = objects
 	k.column.Refresh()
+	k.letGo(before)
+}
+
+// aimField is the wanted sign, which stands below the knobs.
+const aimField = "/aim_sign"
+
+// show shows one field and returns what shows it.
+func (k *KnobColumn) show(f session.Field) fyne.CanvasObject {
+	k.order = append(k.order, f.ID)
+	if f.Kind == session.ChoiceField {
+		choice := k.choice(f.ID)
+		choice.set(f)
+		return choice
+	}
+	preview := ""
+	if s := &k.state; s.Preview != nil && s.Preview.Field == f.ID {
+		preview = s.Preview.Text
+	}
+	row := k.row(f.ID)
+	row.FieldWidth = k.Metrics.Field
+	row.Set(f, preview, k.state.Track, f.ID == k.atHand)
+	return row
 }
 
 func (k *KnobColumn) choice(id string) *choiceRow {
 	if k.choices[id] == nil {
-		k.choices[id] = newChoiceRow(func(word string) { k.did(k.desk.Commit(id, word)) }, k.On.Key)
+		k.choices[id] = k.newChoice(id)
 	}
 	return k.choices[id]
 }
@@ -146,21 +150,6 @@ func (k *KnobColumn) row(id string) *KnobRow {
 		k.rows[id] = k.newRow(id)
 	}
 	return k.rows[id]
-}
-
-// setField shows one field.
-func (k *KnobColumn) setField(f session.Field, s session.State) {
-	if f.Kind == session.ChoiceField {
-		k.choices[f.ID].set(f)
-		return
-	}
-	preview := ""
-	if s.Preview != nil && s.Preview.Field == f.ID {
-		preview = s.Preview.Text
-	}
-	row := k.rows[f.ID]
-	row.FieldWidth = k.Metrics.Field
-	row.Set(f, preview, s.Track, f.ID == k.atHand)
 }
 
 // SetMetrics changes the sizes.
@@ -178,15 +167,19 @@ func (k *KnobColumn) Drop() {
 	}
 }
 
-// Reveal brings a field into sight and gives it the focus.
+// Reveal brings a field into sight, opening its group, and gives it the focus.
 func (k *KnobColumn) Reveal(id string) {
-	row := k.rows[id]
-	if row == nil || !slices.Contains(k.order, id) {
+	if _, ok := k.state.Field(id); !ok {
 		return
 	}
-	if c := fyne.CurrentApp().Driver().CanvasForObject(row.field); c != nil {
-		c.Focus(row.field)
+	k.openFor(id)
+	if choice := k.choices[id]; choice != nil {
+		takeFocus(choice.words)
+		k.scroller.Reveal(choice)
+		return
 	}
+	row := k.rows[id]
+	row.field.takeFocus()
 	k.scroller.Reveal(row)
 }
 

@@ -31,6 +31,19 @@ func (k *KnobColumn) newRow(id string) *KnobRow {
 	return row
 }
 
+// newChoice makes the row of a field of a few words.
+func (k *KnobColumn) newChoice(id string) *choiceRow {
+	var row *choiceRow
+	row = newChoiceRow(choiceEvents{
+		Chosen: func(word string) { k.did(k.desk.Commit(id, word)) },
+		Reset:  func() { k.did(k.desk.Reset(id)) },
+		Focus:  func() { k.reached(row, id) },
+		Menu:   func(at fyne.Position) { k.menu(id, at) },
+		Key:    k.On.Key,
+	})
+	return row
+}
+
 // did shows what became of an action.
 func (k *KnobColumn) did(err error) {
 	k.On.Echo()
@@ -43,15 +56,21 @@ func (k *KnobColumn) typed(row *KnobRow, id, text string) {
 	k.scroller.Fit()
 }
 
-// focused opens the slider of the field that gets the focus. It stays open until
-// another field does.
+// focused tells that a row has got the focus, or has lost it.
 func (k *KnobColumn) focused(row *KnobRow, id string, focused bool) {
-	if !focused || k.atHand == id {
-		return
+	if focused {
+		k.reached(row, id)
 	}
-	k.atHand = id
-	k.desk.Focus(id)
-	k.On.Echo()
+}
+
+// reached opens the slider of the field that gets the focus. It stays open until
+// another field does.
+func (k *KnobColumn) reached(row fyne.CanvasObject, id string) {
+	if k.atHand != id {
+		k.atHand = id
+		k.desk.Focus(id)
+		k.On.Echo()
+	}
 	k.scroller.Reveal(row)
 }
 

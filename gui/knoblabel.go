@@ -5,9 +5,9 @@ import (
 	"fyne.io/fyne/v2/widget"
 )
 
-// KnobLabel is the name of a value with a soft line below it that says where the
-// value comes from, or its sign in words. A click leads to the field, a double
-// click resets it, a right click opens its menu.
+// KnobLabel is the name of a value, on up to two lines, with a soft text below it
+// that says where the value comes from, or its sign in words. A click leads to the
+// field, a double click resets it, a right click opens its menu.
 type KnobLabel struct {
 	widget.BaseWidget
 	OnTapped, OnDoubleTapped func()
@@ -26,7 +26,7 @@ var (
 // NewKnobLabel returns an empty label.
 func NewKnobLabel(tapped, doubleTapped func(), menu func(fyne.Position)) *KnobLabel {
 	l := &KnobLabel{OnTapped: tapped, OnDoubleTapped: doubleTapped, OnMenu: menu,
-		name: NewProse("", textBody, 1), origin: NewProse("", textAxis, 1).soft()}
+		name: NewProse("", textBody, 2), origin: NewProse("", textAxis, 2).soft()}
 	l.ExtendBaseWidget(l)
 	return l
 }
@@ -55,20 +55,22 @@ func (l *KnobLabel) CreateRenderer() fyne.WidgetRenderer {
 }
 
 func (l *KnobLabel) least() fyne.Size {
-	return fyne.NewSize(max(l.name.Width(), l.origin.Width()), l.name.lineHeight()+l.origin.lineHeight())
+	return fyne.NewSize(max(l.name.least().Width, l.origin.least().Width), l.HeightFor(l.Size().Width))
 }
 
-// paint centres the lines; an empty second one takes no room.
-func (l *KnobLabel) paint(size fyne.Size) []fyne.CanvasObject {
-	name, origin := l.name, l.origin
-	total := name.lineHeight()
-	if origin.Text != "" {
-		total += origin.lineHeight()
+// HeightFor is that of the lines in a width; no second text takes no room.
+func (l *KnobLabel) HeightFor(width float32) float32 {
+	if l.origin.Text == "" {
+		return l.name.HeightFor(width)
 	}
-	top := (size.Height - total) / 2
-	name.Move(fyne.NewPos(0, top))
-	name.Resize(fyne.NewSize(size.Width, name.lineHeight()))
-	origin.Move(fyne.NewPos(0, top+name.lineHeight()))
-	origin.Resize(fyne.NewSize(size.Width, origin.lineHeight()))
-	return []fyne.CanvasObject{name, origin}
+	return l.name.HeightFor(width) + l.origin.HeightFor(width)
+}
+
+// paint centres the lines.
+func (l *KnobLabel) paint(size fyne.Size) []fyne.CanvasObject {
+	top := max(0, (size.Height-l.HeightFor(size.Width))/2)
+	high := l.name.HeightFor(size.Width)
+	put(l.name, 0, top, size.Width, high)
+	put(l.origin, 0, top+high, size.Width, l.origin.HeightFor(size.Width))
+	return []fyne.CanvasObject{l.name, l.origin}
 }

@@ -7,9 +7,9 @@ import (
 	"hilltop/gui/session"
 )
 
-// KnobRow is one number of the plan: its label, its field, below them what the
-// text in the field means or why it was refused, and for the knob at hand the
-// slider.
+// KnobRow is one value of the plan: its label, its field beside it, or below it
+// where the text may be long, then what the text in the field means or why it was
+// refused, and for the knob at hand the slider.
 type KnobRow struct {
 	widget.BaseWidget
 	FieldWidth float32
@@ -40,7 +40,7 @@ func NewKnobRow(label *KnobLabel, field *ValueField, slider *KnobSlider) *KnobRo
 // Set shows a value. What the text in the field means is in preview; slider and
 // track are shown for the knob at hand.
 func (r *KnobRow) Set(f session.Field, preview string, track *session.Track, atHand bool) {
-	r.label.Set(f.Label, origin(f))
+	r.label.Set(f.Short, origin(f))
 	r.field.Set(f)
 	r.fault.SetText(f.Reason)
 	show(r.fault, f.Reason != "")
@@ -83,9 +83,22 @@ func show(o fyne.CanvasObject, visible bool) {
 	}
 }
 
+// headHeight is the height of label and field.
+func (r *KnobRow) headHeight(width float32) float32 {
+	if r.field.Long {
+		return r.label.HeightFor(width) + px(space4) + r.field.HeightFor(width)
+	}
+	return max(px(knobHigh), r.label.HeightFor(r.labelWidth(width)))
+}
+
+// labelWidth is the room for the label beside the field.
+func (r *KnobRow) labelWidth(width float32) float32 {
+	return width - min(r.FieldWidth, width) - px(space8)
+}
+
 // HeightFor is that of the parts that are shown.
 func (r *KnobRow) HeightFor(width float32) float32 {
-	height := px(knobHigh)
+	height := r.headHeight(width)
 	if r.note.Visible() {
 		height += r.note.HeightFor(width)
 	}
@@ -109,12 +122,14 @@ func (r *KnobRow) least() fyne.Size {
 }
 
 func (r *KnobRow) paint(size fyne.Size) []fyne.CanvasObject {
-	field := min(r.FieldWidth, size.Width)
-	r.label.Move(fyne.NewPos(0, 0))
-	r.label.Resize(fyne.NewSize(size.Width-field-px(space8), px(knobHigh)))
-	r.field.Move(fyne.NewPos(size.Width-field, (px(knobHigh)-px(rowHeight))/2))
-	r.field.Resize(fyne.NewSize(field, px(rowHeight)))
-	y := px(knobHigh)
+	y := r.headHeight(size.Width)
+	if r.field.Long {
+		put(r.field, 0, place(r.label, 0, size.Width)+px(space4), size.Width, r.field.HeightFor(size.Width))
+	} else {
+		field := min(r.FieldWidth, size.Width)
+		put(r.label, 0, 0, r.labelWidth(size.Width), y)
+		put(r.field, size.Width-field, (y-px(rowHeight))/2, field, px(rowHeight))
+	}
 	if r.note.Visible() {
 		y = place(r.note, y, size.Width)
 	}

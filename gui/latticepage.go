@@ -36,11 +36,11 @@ func newLatticePage(tools pageTools) *LatticePage {
 		p.Show(p.state)
 	})
 	p.axes.OnKey = tools.key
+	p.follow(&p.axes.control, p.axes)
 	p.bands = p.plot("Bands", p.pictureHeight)
 	p.depths = p.plot("J, U and J2 against depth", p.pictureHeight)
 	p.wannier = p.plot("Wannier functions", p.pictureHeight)
-	p.mirror = NewGrid(func(_, column int) { tools.explain(mirrorTopics[column]) })
-	p.mirror.OnKey = tools.key
+	p.mirror = p.grid(func(_, column int) { tools.explain(mirrorTopics[column]) })
 	p.assemble(p.axes, NewPair(p.bands, p.depths),
 		p.detail("Wannier functions", p.wannier), p.detail("size of the break of the mirror", p.mirror))
 	return p

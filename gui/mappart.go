@@ -30,6 +30,7 @@ func newMapPart(p *CeilingPage) *mapPart {
 		return min(max(p.roomInSight()-px(aroundCeiling), px(leastCeiling)), px(mostPicture))
 	})
 	m.job = NewJobBar(m.stop, func() { m.asked, m.held = 0, false; p.tools.echo() }, p.tools.key)
+	p.follow(&m.job.button.control, m.job)
 	m.note.Text = "U and V change alone, V along every axis that moves; the edge of the beams is left out. The diamond is the plan."
 	m.body = NewColumn(space4, 0, m.plot, m.note, m.job)
 	return m

@@ -13,6 +13,7 @@ type menus struct {
 	bar        *fyne.MainMenu
 	undo, redo *fyne.MenuItem
 	apply      *fyne.MenuItem
+	plan       []*fyne.MenuItem // one for each of planItems
 	recent     *fyne.MenuItem
 	shown      *menuWords // nil before the first
 }
@@ -22,12 +23,13 @@ type menuWords struct {
 	undo, redo string
 	advice     bool
 	recent     string
+	plan       string
 }
 
 // buildMenu makes the menu bar. Every action of the window has an item, so that a
 // field with the focus cannot swallow its shortcut.
 func (w *Window) buildMenu() {
-	w.menu.bar = fyne.NewMainMenu(w.fileMenu(), w.editMenu(), w.viewMenu(), w.stageMenu(), w.pictureMenu(), w.helpMenu())
+	w.menu.bar = fyne.NewMainMenu(w.fileMenu(), w.editMenu(), w.viewMenu(), w.planMenu(), w.stageMenu(), w.pictureMenu(), w.helpMenu())
 	w.window.SetMainMenu(w.menu.bar)
 }
 
@@ -74,7 +76,9 @@ func (w *Window) editMenu() *fyne.Menu {
 		item("Inherit the value again", fyne.KeyBackspace, ctrl, func() { w.onFocused(w.desk.Clear) }),
 		item("Back to the saved value", fyne.KeyBackspace, ctrl|fyne.KeyModifierShift, func() { w.onFocused(w.desk.Reset) }),
 		item("Next unit", fyne.KeyU, ctrl, func() { w.onFocused(w.nextUnit) }),
-		item("Explain the value", fyne.KeyE, ctrl, w.explainFocused),
+		item("Source and formula of the value", fyne.KeyE, ctrl, w.explainFocused),
+		item("Copy the value", fyne.KeyC, ctrl|fyne.KeyModifierShift, w.copyFocused),
+		item("Menu of the value", fyne.KeyM, ctrl, w.menuAtHand),
 		fyne.NewMenuItemSeparator(),
 		w.menu.apply,
 		item("Judge again", fyne.KeyR, ctrl, w.retry),
@@ -124,7 +128,7 @@ func (w *Window) helpMenu() *fyne.Menu {
 // refreshMenu names the edits that can be taken back, and the recent files.
 func (w *Window) refreshMenu() {
 	s := w.state
-	words := menuWords{undo: s.Undo, redo: s.Redo, advice: w.bar.advice != nil}
+	words := menuWords{undo: s.Undo, redo: s.Redo, advice: w.bar.advice != nil, plan: planWords(s)}
 	for _, path := range s.Recent {
 		words.recent += path + "\n"
 	}
@@ -135,6 +139,7 @@ func (w *Window) refreshMenu() {
 	nameEdit(w.menu.undo, "Undo", s.Undo, &fyne.ShortcutUndo{})
 	nameEdit(w.menu.redo, "Redo", s.Redo, &fyne.ShortcutRedo{})
 	w.menu.apply.Disabled = !words.advice
+	w.refreshPlan()
 	var items []*fyne.MenuItem
 	for i, path := range s.Recent {
 		items = append(items, item(filepath.Base(path), digitKey(i), ctrl, func() { w.ifSaved("opening another plan", func() { w.open(path) }) }))
@@ -154,20 +159,26 @@ func nameEdit(i *fyne.MenuItem, verb, edit string, keys fyne.KeyboardShortcut) {
 }
 
 func (w *Window) undo() {
+	edit := w.state.Undo
 	w.desk.Undo()
-	w.afterHistory()
+	w.afterHistory("Undone: ", edit)
 }
 
 func (w *Window) redo() {
+	edit := w.state.Redo
 	w.desk.Redo()
-	w.afterHistory()
+	w.afterHistory("Done again: ", edit)
 }
 
-// afterHistory leads to the field that changed.
-func (w *Window) afterHistory() {
+// afterHistory says which edit was taken back or done again, and leads to the field
+// that changed.
+func (w *Window) afterHistory(verb, edit string) {
 	w.column.Drop()
 	w.Echo()
-	w.column.Reveal(w.state.Touched)
+	if edit != "" {
+		w.status.Say(verb + edit)
+	}
+	w.reveal(w.state.Touched)
 }
 
 func (w *Window) applyAdvice() {

@@ -6,7 +6,7 @@ import (
 )
 
 // Number is a number that explains itself: a click, Space or Enter opens the strip
-// with its formula.
+// with its formula, a right click its menu.
 type Number struct {
 	control
 	OnExplain func(topic string)
@@ -20,6 +20,8 @@ var (
 	_ fyne.Tappable      = (*Number)(nil)
 	_ fyne.Focusable     = (*Number)(nil)
 	_ desktop.Cursorable = (*Number)(nil)
+
+	_ fyne.SecondaryTappable = (*Number)(nil)
 )
 
 // NewNumber returns a number without a value.
@@ -38,6 +40,12 @@ func (n *Number) Set(text, topic string) {
 
 // Tapped opens the strip.
 func (n *Number) Tapped(*fyne.PointEvent) { n.OnExplain(n.topic) }
+
+// TappedSecondary takes the focus and does what the menu key does.
+func (n *Number) TappedSecondary(*fyne.PointEvent) {
+	takeFocus(n)
+	n.unused(&fyne.KeyEvent{Name: desktop.KeyMenu})
+}
 
 // TypedKey opens the strip with Space or Enter.
 func (n *Number) TypedKey(e *fyne.KeyEvent) {

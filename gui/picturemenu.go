@@ -62,7 +62,7 @@ func (w *Window) pictureMenu() *fyne.Menu {
 		fyne.NewMenuItemSeparator(),
 		item("Zoom in", fyne.KeyI, both, w.onPlot(func(p *Plot) { p.sheet.zoom(p.sheet.centre(), zoomBy) })),
 		item("Zoom out", fyne.KeyO, both, w.onPlot(func(p *Plot) { p.sheet.zoom(p.sheet.centre(), 1/zoomBy) })),
-		item("Whole picture", fyne.Key0, both, w.onPlot(func(p *Plot) { p.look(p.view.reset()) })),
+		item("Reset the view", fyne.Key0, both, w.onPlot(func(p *Plot) { p.look(p.view.reset()) })),
 		item("Move to the right", fyne.KeyRight, both, pan(+1, 0)),
 		item("Move to the left", fyne.KeyLeft, both, pan(-1, 0)),
 		item("Move up", fyne.KeyUp, both, pan(0, +1)),

@@ -52,7 +52,7 @@ func TestPictureMenuActsOnThePlotAtHand(t *testing.T) {
 	if page.depths.view.whole() || page.depths.view.pinned == nil || !page.bands.view.whole() {
 		t.Errorf("views: depths %+v, bands %+v", page.depths.view, page.bands.view)
 	}
-	b.item("Whole picture").Action()
+	b.item("Reset the view").Action()
 	b.item("Next unit of the picture").Action()
 	b.settle()
 	if !page.depths.view.whole() || page.depths.view.unit == bandUnits[0] {

@@ -56,7 +56,7 @@ func NewPlot(name string, tools plotTools) *Plot {
 	p.unit = p.button("Hz", p.nextUnit)
 	p.scale = p.button("Range: all", p.nextScale)
 	p.pin = p.button("Pin", p.togglePin)
-	p.whole = p.button("Whole", func() { p.look(p.view.reset()) })
+	p.whole = p.button("Reset", func() { p.look(p.view.reset()) })
 	p.save = p.button("Save", p.askToSave)
 	p.ExtendBaseWidget(p)
 	p.readOut()

@@ -284,3 +284,26 @@ func TestNothingToShow(t *testing.T) {
 		t.Error("the button of an empty page does not lead to page Ceiling")
 	}
 }
+
+// The page scrolls to what gets the focus from the keyboard, and stays under the
+// hand.
+func TestPageFollowsTheFocus(t *testing.T) {
+	b := newBench(t, setup{width: 1024, height: 648})
+	page := b.ceilingPage()
+	offset := func() float32 { return page.scroller.scroll.Offset.Y }
+	b.canvas().Focus(page.stages)
+	if offset() == 0 {
+		t.Error("the page does not scroll to its last table")
+	}
+	down := offset()
+	b.canvas().Unfocus()
+	page.picture.sheet.MouseDown(&desktop.MouseEvent{Button: desktop.MouseButtonPrimary})
+	if offset() != down || b.canvas().Focused() != page.picture.sheet {
+		t.Error("a click scrolls the page")
+	}
+	b.canvas().Unfocus()
+	b.canvas().Focus(page.picture.sheet)
+	if offset() == down {
+		t.Error("the page does not scroll back to its picture")
+	}
+}

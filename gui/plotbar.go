@@ -19,7 +19,7 @@ func (p *Plot) readOut() {
 		case p.stale != "":
 			text = "from before: " + p.stale
 		case p.sheet.focused:
-			text = "Arrows read, + and − zoom, Shift and arrows move, 0 shows all, P pins."
+			text = "Arrows read, + and − zoom, Shift and arrows move, 0 resets, P pins."
 		case p.view.pinned != nil:
 			text = "Dashed: the pinned reference."
 		default:

@@ -45,15 +45,41 @@ func (p *plotPage) plot(name string, high func(width float32) float32) *Plot {
 	tools.scroll = func(e *fyne.ScrollEvent) { p.scroller.Scrolled(e) }
 	plot := NewPlot(name, tools)
 	plot.high = high
+	plot.sheet.OnFocus = func() {
+		if !plot.sheet.held {
+			p.scroller.Reveal(plot)
+		}
+	}
+	for _, b := range []*Button{plot.unit, plot.scale, plot.pin, plot.whole, plot.save} {
+		p.follow(&b.control, b)
+	}
 	p.plotList = append(p.plotList, plot)
 	return plot
 }
 
+// follow scrolls to a control of the page when it gets the focus.
+func (p *plotPage) follow(c *control, o fyne.CanvasObject) {
+	c.OnFocus = func() { p.scroller.Reveal(o) }
+}
+
+// grid makes a table of the page.
+func (p *plotPage) grid(cell func(row, column int)) *Grid {
+	g := NewGrid(cell)
+	g.OnKey = p.tools.key
+	p.follow(&g.control, g)
+	return g
+}
+
 // detail makes a part on demand.
 func (p *plotPage) detail(title string, body fyne.CanvasObject) *Disclosure {
-	d := NewDisclosure(title, body, p.tools.key, func() {
+	var d *Disclosure
+	d = NewDisclosure(title, body, p.tools.key, func() {
 		p.again()
+		if d.open {
+			p.scroller.Begin(d)
+		}
 	})
+	p.follow(&d.head.control, d.head)
 	p.details = append(p.details, d)
 	return d
 }

@@ -196,14 +196,19 @@ func (p *Prose) paint(size fyne.Size) []fyne.CanvasObject {
 	return texts
 }
 
-// paintLine draws the runs of a line, all on the baseline of the lowest.
-func (p *Prose) paintLine(line string, at fyne.Position) []fyne.CanvasObject {
-	list := runsOf(line, p.style)
+// ascent is how far the baseline of a line is below its top.
+func (p *Prose) ascent(line string) float32 {
 	ascent := float32(0)
-	for _, run := range list {
+	for _, run := range runsOf(line, p.style) {
 		_, baseline := measure(run.text, px(p.TextSize), run.style)
 		ascent = max(ascent, baseline)
 	}
+	return ascent
+}
+
+// paintLine draws the runs of a line, all on the baseline of the lowest.
+func (p *Prose) paintLine(line string, at fyne.Position) []fyne.CanvasObject {
+	list, ascent := runsOf(line, p.style), p.ascent(line)
 	texts := make([]fyne.CanvasObject, len(list))
 	for i, run := range list {
 		text := canvas.NewText(run.text, tint(p.Color))

@@ -22,11 +22,11 @@ type roomPart struct {
 	held   bool        // stopped by the user
 }
 
-func newRoomPart(tools pageTools) *roomPart {
-	r := &roomPart{tools: tools, note: NewProse("", textAxis, 0).soft()}
-	r.grid = NewGrid(func(row, _ int) { tools.goTo(r.rooms[row].Stage, r.rooms[row].Field) })
-	r.grid.OnKey = tools.key
-	r.job = NewJobBar(r.stop, func() { r.asked, r.held = 0, false; tools.echo() }, tools.key)
+func newRoomPart(p *CeilingPage) *roomPart {
+	r := &roomPart{tools: p.tools, note: NewProse("", textAxis, 0).soft()}
+	r.grid = p.grid(func(row, _ int) { r.tools.goTo(r.rooms[row].Stage, r.rooms[row].Field) })
+	r.job = NewJobBar(r.stop, func() { r.asked, r.held = 0, false; r.tools.echo() }, p.tools.key)
+	p.follow(&r.job.button.control, r.job)
 	r.body = NewColumn(space4, 0, r.grid, r.note, r.job)
 	return r
 }

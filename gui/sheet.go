@@ -31,6 +31,7 @@ type pictureSheet struct {
 	frame   *canvas.Rectangle // of the box
 
 	shift bool // is held
+	held  bool // the focus comes from the hand
 	grip  *grip
 }
 

@@ -45,7 +45,9 @@ func (s *pictureSheet) MouseOut() {
 // MouseDown takes the focus and takes hold of the picture; with Shift it begins a
 // box.
 func (s *pictureSheet) MouseDown(e *desktop.MouseEvent) {
+	s.held = true // under the hand nothing may scroll
 	s.plot.focus()
+	s.held = false
 	if s.drawn == nil || e.Button != desktop.MouseButtonPrimary {
 		return
 	}
@@ -192,8 +194,8 @@ func (s *pictureSheet) pan(right, up int) {
 // FocusLost drops the crosshair.
 func (s *pictureSheet) FocusLost() {
 	s.shift = false
-	s.read(reading{}, false)
 	s.control.FocusLost()
+	s.read(reading{}, false)
 }
 
 // FocusGained makes this the plot that the menu acts on.

@@ -14,6 +14,9 @@ import (
 // Shift a tenth of it, Page Up and Page Down ten; Delete on an empty field clears
 // the value, so that it is inherited again. Text that was refused stays, with a
 // dashed outline.
+//
+// A field of words has no steps. A long one wraps its text over several lines, from
+// the left, and Up and Down move between them.
 type ValueField struct {
 	widget.BaseWidget
 
@@ -21,6 +24,8 @@ type ValueField struct {
 	Unit      string
 	Inherited bool // the value is drawn soft
 	Refused   bool // the text is not in the plan
+	Words     bool // a text, not a number
+	Long      bool // a text that may take several lines
 	On        FieldEvents
 
 	line    editLine
@@ -71,6 +76,7 @@ func NewValueField(events FieldEvents) *ValueField {
 func (f *ValueField) Set(v session.Field) {
 	f.Name, f.Unit, f.Inherited = v.Label, session.Symbol(v.Unit), v.Inherited
 	f.Refused = v.Reason != ""
+	f.Words, f.Long = v.Kind != session.NumberField, v.Long
 	edited := f.Edited()
 	f.shown = v.Text
 	switch {
@@ -148,7 +154,7 @@ func (f *ValueField) MouseDown(e *desktop.MouseEvent) {
 	gained := !f.focused
 	f.takeFocus()
 	if e.Button == desktop.MouseButtonPrimary && !gained {
-		f.line.moveTo(f.placeAt(e.Position.X), extendSelection(f.shift))
+		f.line.moveTo(f.placeAt(e.Position), extendSelection(f.shift))
 		f.Refresh()
 	}
 }
@@ -156,15 +162,11 @@ func (f *ValueField) MouseDown(e *desktop.MouseEvent) {
 // MouseUp does nothing.
 func (f *ValueField) MouseUp(*desktop.MouseEvent) {}
 
-func (f *ValueField) takeFocus() {
-	if c := fyne.CurrentApp().Driver().CanvasForObject(f); c != nil && c.Focused() != f {
-		c.Focus(f)
-	}
-}
+func (f *ValueField) takeFocus() { takeFocus(f) }
 
 // Dragged selects text.
 func (f *ValueField) Dragged(e *fyne.DragEvent) {
-	f.line.moveTo(f.placeAt(e.Position.X), true)
+	f.line.moveTo(f.placeAt(e.Position), true)
 	f.Refresh()
 }
 
@@ -173,7 +175,7 @@ func (f *ValueField) DragEnd() {}
 
 // DoubleTapped selects the word under the pointer.
 func (f *ValueField) DoubleTapped(e *fyne.PointEvent) {
-	f.line.selectWord(f.placeAt(e.Position.X))
+	f.line.selectWord(f.placeAt(e.Position))
 	f.Refresh()
 }
 
@@ -184,7 +186,7 @@ func (f *ValueField) TappedSecondary(e *fyne.PointEvent) { f.On.Menu(e.AbsoluteP
 // the field stands in.
 func (f *ValueField) Scrolled(e *fyne.ScrollEvent) {
 	switch {
-	case !f.focused:
+	case !f.focused || f.Words:
 		f.On.Scroll(e)
 	case e.Scrolled.DY > 0:
 		f.step(+1, session.LastDigit)

@@ -70,16 +70,28 @@ func (f *ValueField) actionKey(e *fyne.KeyEvent) {
 			direction = -1
 		}
 		f.On.Leave(direction)
-	case fyne.KeyUp:
-		f.step(+1, f.finer())
-	case fyne.KeyDown:
-		f.step(-1, f.finer())
-	case fyne.KeyPageUp:
-		f.step(+1, session.TenDigits)
-	case fyne.KeyPageDown:
-		f.step(-1, session.TenDigits)
 	default:
+		f.stepKey(e)
+	}
+}
+
+// stepKey handles the keys that step a number; in words they move the cursor.
+func (f *ValueField) stepKey(e *fyne.KeyEvent) {
+	step, known := map[fyne.KeyName]struct {
+		n    int
+		size session.StepSize
+	}{
+		fyne.KeyUp: {+1, f.finer()}, fyne.KeyDown: {-1, f.finer()},
+		fyne.KeyPageUp: {+1, session.TenDigits}, fyne.KeyPageDown: {-1, session.TenDigits},
+	}[e.Name]
+	switch {
+	case !known:
 		f.On.Key(e)
+	case !f.Words:
+		f.step(step.n, step.size)
+	case f.Long:
+		f.moveLine(-step.n, extendSelection(f.shift))
+		f.Refresh()
 	}
 }
 

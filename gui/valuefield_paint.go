@@ -10,6 +10,7 @@ import (
 
 const (
 	fieldInset = space8 // between the outline and the text
+	longInset  = 6      // the same above and below a long text
 	unitGap    = 6      // between the number and its unit
 )
 
@@ -61,9 +62,14 @@ func (f *ValueField) x(place int) float32 {
 }
 
 // placeAt is the place between two runes nearest to a position.
-func (f *ValueField) placeAt(x float32) int {
+func (f *ValueField) placeAt(at fyne.Position) int {
+	if f.Long {
+		lines := f.lines(f.Size().Width)
+		i := min(max(int((at.Y-px(longInset))/f.lineHeight()), 0), len(lines)-1)
+		return lastOf(lines, i, int((at.X-px(fieldInset))/f.runeWidth()+0.5))
+	}
 	_, high := f.window()
-	back := (f.rightEdge() - x) / f.runeWidth()
+	back := (f.rightEdge() - at.X) / f.runeWidth()
 	return f.line.inside(high - int(back+0.5))
 }
 
@@ -75,6 +81,9 @@ func (f *ValueField) CreateRenderer() fyne.WidgetRenderer {
 
 // least has room for six characters.
 func (f *ValueField) least() fyne.Size {
+	if f.Long {
+		return fyne.NewSize(6*f.runeWidth()+2*px(fieldInset), f.HeightFor(f.Size().Width))
+	}
 	width := 6*f.runeWidth() + 2*px(fieldInset) + px(unitGap) + f.unitWidth()
 	return fyne.NewSize(width, px(rowHeight))
 }
@@ -85,8 +94,12 @@ func (f *ValueField) paint(size fyne.Size) []fyne.CanvasObject {
 		edge, stroke = ColorInk, lineFocus
 	}
 	parts := framed(fyne.Position{}, size, ColorField, stroke, edge)
-	parts = append(parts, f.paintSelection(size)...)
-	parts = append(parts, f.paintText(size)...)
+	if f.Long {
+		parts = append(parts, f.paintLines(size)...)
+	} else {
+		parts = append(parts, f.paintSelection(size)...)
+		parts = append(parts, f.paintText(size)...)
+	}
 	if f.Refused {
 		parts = append(parts, dashed(fyne.Position{}, size, lineFocus, 6, 4, ColorInk)...)
 	}
@@ -110,12 +123,8 @@ func (f *ValueField) paintSelection(size fyne.Size) []fyne.CanvasObject {
 
 // paintText draws the number and the unit on one baseline.
 func (f *ValueField) paintText(size fyne.Size) []fyne.CanvasObject {
-	ink := ColorInk
-	if f.Inherited && !f.Edited() {
-		ink = ColorSoftInk
-	}
 	low, high := f.window()
-	number := canvas.NewText(string(f.line.text[low:high]), tint(ink))
+	number := canvas.NewText(string(f.line.text[low:high]), tint(f.ink()))
 	number.TextSize, number.TextStyle = px(textBody), monospace
 	box, baseline := measure(number.Text, number.TextSize, monospace)
 	top := (size.Height - box.Height) / 2
@@ -129,4 +138,36 @@ func (f *ValueField) paintText(size fyne.Size) []fyne.CanvasObject {
 	_, drop := measure(f.Unit, px(textAxis), unit.style(f.Unit))
 	unit.Move(fyne.NewPos(size.Width-px(fieldInset)-f.unitWidth(), top+baseline-drop))
 	return []fyne.CanvasObject{number, unit}
+}
+
+// ink is the colour of the text: soft for a value of another stage.
+func (f *ValueField) ink() fyne.ThemeColorName {
+	if f.Inherited && !f.Edited() {
+		return ColorSoftInk
+	}
+	return ColorInk
+}
+
+// paintLines draws a long text from the left, with the selection and the cursor.
+func (f *ValueField) paintLines(size fyne.Size) []fyne.CanvasObject {
+	var grounds, texts []fyne.CanvasObject
+	lines, high, wide := f.lines(size.Width), f.lineHeight(), f.runeWidth()
+	from, to := f.line.selection()
+	cursorLine := lineOf(lines, f.line.cursor)
+	for i, line := range lines {
+		at := fyne.NewPos(px(fieldInset), px(longInset)+float32(i)*high)
+		if low, top := max(from, line.low), min(to, line.high); f.focused && low < top {
+			grounds = append(grounds, filled(at.AddXY(float32(low-line.low)*wide, 0), fyne.NewSize(float32(top-low)*wide, high), selectionColor))
+		}
+		if f.focused && i == cursorLine {
+			x := float32(f.line.cursor-line.low)*wide - lineNormal/2
+			texts = append(texts, filled(at.AddXY(x, 0), fyne.NewSize(lineNormal, high), ColorInk))
+		}
+		text := canvas.NewText(string(f.line.text[line.low:line.high]), tint(f.ink()))
+		text.TextSize, text.TextStyle = px(textBody), monospace
+		text.Resize(text.MinSize())
+		text.Move(at)
+		texts = append(texts, text)
+	}
+	return append(grounds, texts...)
 }

@@ -199,12 +199,12 @@ func stageActions(p *plan.Plan, stage int) []Action {
 		return list
 	}
 	if stage > 0 {
-		list = append(list, at(raises, "Earlier"))
+		list = append(list, at(raises, "Move earlier"))
 	}
 	if stage < len(p.Stages)-1 {
-		list = append(list, at(lowers, "Later"))
+		list = append(list, at(lowers, "Move later"))
 	}
-	return append(list, at(removes, "Remove"))
+	return append(list, at(removes, "Remove stage"))
 }
 
 func latticeParts(p *plan.Plan) []Part {
