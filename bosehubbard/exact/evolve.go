@@ -56,14 +56,17 @@ type Evolution struct {
 
 // ErrorBudget says how far the state may be from the exact one, as |psi - exact|.
 type ErrorBudget struct {
-	// Ordering is the sum of the estimated errors of all steps from H(t) at
-	// different times not commuting. They partly cancel; the error itself is mostly
-	// far below their sum.
+	// Ordering is the estimated error of all steps from H(t) not commuting with itself
+	// at other times: the sum of the norms of what stays of every step, and of what
+	// returns at the ends of the segments.
 	Ordering float64
 
 	// Krylov is the sum of the bounds of the errors of all exponentials.
 	Krylov float64
 }
+
+// Sum returns the sum of both.
+func (b ErrorBudget) Sum() float64 { return b.Ordering + b.Krylov }
 
 // NewEvolution starts from the number state with the given atoms per site.
 //
@@ -197,7 +200,7 @@ const scratchVectors = 4
 
 func (e *Evolution) allocate(dimension, workers int) {
 	n := e.hamiltonian.hops.Len()
-	e.propagator = krylov.New(n, krylov.Options{Dimension: dimension, Least: 4, Workers: workers})
+	e.propagator = krylov.New(n, krylov.Options{Dimension: dimension, Least: 3, Workers: workers})
 	e.psi = krylov.NewVector(n)
 	for range scratchVectors {
 		e.scratch = append(e.scratch, krylov.NewVector(n))

@@ -1,93 +1,96 @@
 package exact
 
-import "context"
+import (
+	"context"
+	"math"
+)
 
-// commutator evaluates D psi by Horner's scheme, with A = a R1, B, C, E the sums
-// that stand in three, two, one and no commutators with H, phi_k = H^k psi:
+// commutator evaluates, with phi_k = H^k psi and t = 2 pi h,
 //
-//	D psi = H (H (H A phi_0 - 3 A phi_1 + B phi_0)
-//	           + 3 A phi_2 - 2 B phi_1 + C phi_0 - q R1^2 phi_0)
-//	        - A phi_3 + B phi_2 - C phi_1 + E phi_0 + q (2 R1 H R1 phi_0 - R1^2 phi_1)
-//
-// with q the factor of [R1, [H, R1]]. All factors are real or imaginary.
+//	Q psi = H (i t^3/2880 (H R1 phi_0 - 2 R1 phi_1) + t^2/480 R2 phi_0)
+//	        + i t^3/2880 R1 phi_2 - t^2/480 R2 phi_1 + i t/1440 (g3 phi_1 + R3 phi_0)
+//	S psi = H (-i t^3/8640 (g1 (H R1 phi_0 - 2 R1 phi_1) - R1^2 phi_0) - t^2/1440 g1 R2 phi_0)
+//	        - i t^3/8640 (g1 R1 phi_2 + 2 R1 H R1 phi_0 - R1^2 phi_1)
+//	        + t^2/1440 (g1 R2 phi_1 + g2 (H R1 phi_0 - R1 phi_1)) + i t/120 (g4 phi_1 + R4 phi_0)
 type commutator struct {
 	*run
 	*estimate
-	a, b, c, e, q complex128
+	theta float64
 
-	phi, inner, low, high vector
+	phi1, inner vector // inner = H R1 phi_0
+	left, right vector
 }
 
-// power sets phi = H^k psi.
-func (d *commutator) power(ctx context.Context, k int) error {
-	return d.propagator.PowerTo(ctx, d.phi, k)
-}
-
-func (d *commutator) apply(ctx context.Context, dst, x vector) error {
-	_, err := d.hamiltonian.product(ctx, dst, x)
-	return err
-}
-
-// norm returns |D psi|.
-func (d *commutator) norm(ctx context.Context) (float64, error) {
-	for _, stage := range []func(context.Context) error{d.innermost, d.middle, d.outermost} {
-		if err := stage(ctx); err != nil {
-			return 0, err
-		}
+// defect returns |Q psi| and |S psi|.
+func (c *commutator) defect(ctx context.Context) (d defect, err error) {
+	clearVector(c.left)
+	addTimes(c.left, c.psi, c.r1, 1)
+	if _, err = c.hamiltonian.product(ctx, c.inner, c.left); err != nil {
+		return d, err
 	}
-	return norm(d.low), nil
+	if err = c.propagator.PowerTo(ctx, c.phi1, 1); err != nil {
+		return d, err
+	}
+	if err = c.returning(ctx); err != nil {
+		return d, err
+	}
+	d.returning = norm(c.right)
+	if err = c.staying(ctx); err != nil {
+		return d, err
+	}
+	d.staying = norm(c.right)
+	return d, nil
 }
 
-// innermost sets inner = H R1 phi_0 and low to what the second H acts on.
-func (d *commutator) innermost(ctx context.Context) error {
-	clearVector(d.phi)
-	addTimes(d.phi, d.psi, d.r1, 1)
-	if err := d.apply(ctx, d.inner, d.phi); err != nil {
+// apply sets right = H left and then left = phi_2.
+func (c *commutator) apply(ctx context.Context) error {
+	if _, err := c.hamiltonian.product(ctx, c.right, c.left); err != nil {
 		return err
 	}
-	if err := d.power(ctx, 1); err != nil {
+	return c.propagator.PowerTo(ctx, c.left, 2)
+}
+
+// returning sets right = Q psi.
+func (c *commutator) returning(ctx context.Context) error {
+	third := complex(0, math.Pow(c.theta, 3)/2880)
+	second := complex(c.theta*c.theta/480, 0)
+	first := complex(0, c.theta/1440)
+	clearVector(c.left)
+	addMultiple(c.left, c.inner, third)
+	addTimes(c.left, c.phi1, c.r1, -2*third)
+	addTimes(c.left, c.psi, c.r2, second)
+	if err := c.apply(ctx); err != nil {
 		return err
 	}
-	clearVector(d.low)
-	addMultiple(d.low, d.inner, d.a)
-	addTimes(d.low, d.phi, d.r1, -3*d.a)
-	addTimes(d.low, d.psi, d.twice, d.b)
+	addTimes(c.right, c.left, c.r1, third)
+	addTimes(c.right, c.phi1, c.r2, -second)
+	addMultiple(c.right, c.phi1, first*complex(c.g[3], 0))
+	addTimes(c.right, c.psi, c.r3, first)
 	return nil
 }
 
-// middle sets high to what the last H acts on. It starts with phi = phi_1.
-func (d *commutator) middle(ctx context.Context) error {
-	if err := d.apply(ctx, d.high, d.low); err != nil {
+// staying sets right = S psi.
+func (c *commutator) staying(ctx context.Context) error {
+	third := complex(0, -math.Pow(c.theta, 3)/8640)
+	second := complex(c.theta*c.theta/1440, 0)
+	first := complex(0, c.theta/120)
+	g1, g2, g4 := complex(c.g[1], 0), complex(c.g[2], 0), complex(c.g[4], 0)
+	clearVector(c.left)
+	addMultiple(c.left, c.inner, third*g1)
+	addTimes(c.left, c.phi1, c.r1, -2*third*g1)
+	addSquare(c.left, c.psi, c.r1, -third)
+	addTimes(c.left, c.psi, c.r2, -second*g1)
+	if err := c.apply(ctx); err != nil {
 		return err
 	}
-	addTimes(d.high, d.phi, d.twice, -2*d.b)
-	addTimes(d.high, d.psi, d.once, d.c)
-	addSquare(d.high, d.psi, d.r1, -d.q)
-	if err := d.power(ctx, 2); err != nil {
-		return err
-	}
-	addTimes(d.high, d.phi, d.r1, 3*d.a)
-	return nil
-}
-
-// outermost sets low to D psi. It starts with phi = phi_2.
-func (d *commutator) outermost(ctx context.Context) error {
-	if err := d.apply(ctx, d.low, d.high); err != nil {
-		return err
-	}
-	addTimes(d.low, d.phi, d.twice, d.b)
-	addTimes(d.low, d.inner, d.r1, 2*d.q)
-	addTimes(d.low, d.psi, d.none, d.e)
-	if err := d.power(ctx, 1); err != nil {
-		return err
-	}
-	addTimes(d.low, d.phi, d.once, -d.c)
-	addMultiple(d.low, d.phi, d.e*complex(d.g[4], 0))
-	addSquare(d.low, d.phi, d.r1, -d.q)
-	if err := d.power(ctx, 3); err != nil {
-		return err
-	}
-	addTimes(d.low, d.phi, d.r1, -d.a)
+	addTimes(c.right, c.left, c.r1, third*g1)
+	addTimes(c.right, c.inner, c.r1, 2*third)
+	addSquare(c.right, c.phi1, c.r1, -third)
+	addTimes(c.right, c.phi1, c.r2, second*g1)
+	addMultiple(c.right, c.inner, second*g2)
+	addTimes(c.right, c.phi1, c.r1, -second*g2)
+	addMultiple(c.right, c.phi1, first*g4)
+	addTimes(c.right, c.psi, c.r4, first)
 	return nil
 }
 

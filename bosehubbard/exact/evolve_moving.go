@@ -30,7 +30,7 @@ type moving struct {
 	scale float64 // H has scale times the hops
 
 	tables   [][]float64 // of V_a, F_a and U, in the order of couplings; nil where not needed
-	diagonal []float64
+	diagonal []float64   // the same, or what is left of it within limits
 
 	request fock.Product
 	dst, x  krylov.Vector

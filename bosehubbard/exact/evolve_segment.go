@@ -10,7 +10,7 @@ import (
 )
 
 // DefaultTolerance of the steps of a Segment.
-const DefaultTolerance = 1e-4
+const DefaultTolerance = 1e-3
 
 // krylovShare is the part of the tolerance that all exponentials together take.
 const krylovShare = 0.1
@@ -30,8 +30,8 @@ type Segment struct {
 	// to twice Every at most.
 	Every float64
 
-	// Tolerance of the estimated errors of all steps together, ErrorBudget.Ordering;
-	// the exponentials take a tenth of it more. 0: DefaultTolerance.
+	// Tolerance of the state's error from steps in time, ErrorBudget.Ordering; the
+	// exponentials take a tenth of it more. 0: DefaultTolerance.
 	Tolerance float64
 
 	// Progress, if not nil, is called on the computing goroutine.
@@ -91,14 +91,23 @@ type run struct {
 	begin   float64 // s, of the evolution
 	samples []Sample
 	last    float64 // time of the last sample, s
-	model   bosehubbard.Model
+	rest    int     // steps until the next estimate
+	change  float64 // of the couplings per time at the last one
+
+	before struct { // the step before, h = 0 before the first
+		h, end float64 // length, and what counts as returning at its end
+		defect
+	}
+	model bosehubbard.Model
 }
 
 // drive goes from one of the times to the next.
 func (r *run) drive(ctx context.Context) error {
 	r.model.Axes = make([]bosehubbard.AxisTerms, r.now.axes())
-	if r.pace = min(r.pace, r.Duration); r.pace == 0 {
-		r.pace = r.Duration / 8
+	if r.pace == 0 && r.Duration > 0 {
+		if err := r.firstPace(ctx); err != nil {
+			return err
+		}
 	}
 	at := 0.0
 	for _, stop := range append(slices.Clone(r.Times), r.Duration) {

@@ -48,10 +48,29 @@ const (
 	cautious    = 0.9
 )
 
+// shares of the tolerance: for what stays of the errors of all steps, and for what
+// one step has to give back at the end.
+const (
+	stayingShare   = 0.5
+	returningShare = 0.125
+)
+
+// fewestSteps of a segment: fewer could miss the shape of its drive.
+const fewestSteps = 8
+
+// caution is for what the leading order of the error leaves out.
+const caution = 1.5
+
+// widestAngle is how far the frequencies in the state may turn in a step. At 2 pi
+// they would be in resonance with the steps: the errors of all steps would add up,
+// and the estimate would not know. Some turn three times as fast as the mean.
+const widestAngle = 1.6
+
 // ramp takes steps from one time of the segment to another.
 func (r *run) ramp(ctx context.Context, from, to float64) error {
 	for at := from; at < to; {
 		left := to - at
+		r.pace = min(r.pace, r.Duration/fewestSteps)
 		if r.Every > 0 {
 			r.pace = min(r.pace, 2*r.Every)
 		}
@@ -105,18 +124,25 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	if err != nil {
 		return false, err
 	}
-	ordering, err := r.commutators(ctx, h)
+	error, err := r.estimated(ctx, h)
 	if err != nil {
 		return false, err
 	}
-	if r.setPace(h, ordering, allowed); ordering > allowed {
+	excess := max(error.staying/(stayingShare*allowed), error.returning/(returningShare*r.Tolerance))
+	if r.rest--; excess < easy && r.rest < 0 {
+		r.rest = easySteps - 1
+	}
+	if !s.constant() {
+		excess = max(excess, math.Pow(2*math.Pi*h*r.propagator.Frequency()/widestAngle, 4))
+	}
+	if r.setPace(h, excess); excess > 1 {
 		return false, nil
 	}
+	r.account(h, error)
 	if _, err := r.propagator.AdvanceTo(ctx, r.psi, reach); err != nil {
 		return false, err
 	}
 	r.budget.Krylov += bound
-	r.budget.Ordering += ordering
 	if reach < tau {
 		if err := r.exponential(ctx, tau-reach, tolerance*(1-reach/tau)); err != nil {
 			return false, err
@@ -128,6 +154,45 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	return true, r.exponential(ctx, tau, tolerance)
 }
 
+// estimated returns the error of a step with some caution. After one whose error is
+// far below what is allowed, two are taken to have the same, by their lengths, if
+// the drive goes on as it did.
+func (r *run) estimated(ctx context.Context, h float64) (defect, error) {
+	change := r.tools.change() / h
+	if r.rest > 0 && change < 1.5*r.change {
+		ratio := h / r.before.h
+		return defect{returning: r.before.returning * math.Pow(ratio, 4), staying: r.before.staying * math.Pow(ratio, 5)}, nil
+	}
+	r.rest, r.change = 0, change
+	error, err := r.commutators(ctx, h)
+	return defect{returning: caution * error.returning, staying: caution * error.staying}, err
+}
+
+const (
+	easy      = 0.3 // share of what is allowed
+	easySteps = 3   // from one estimate to the next
+)
+
+// account adds the error of a step to the budget: what returns is there at the
+// begin of the segment and, for the time being, at the end of this step, and where
+// steps change their length, the change of it, which goes as h^4. What returns is
+// known about the begin of a step; where it grows, it is taken to go on growing.
+func (r *run) account(h float64, error defect) {
+	begin, end := error.returning, error.returning
+	if before := r.before; before.h > 0 {
+		same := before.returning * math.Pow(h/before.h, 4)
+		begin = math.Abs(same - before.returning)
+		if same > 0 {
+			end *= min(max(error.returning/same, 1), mostGrowth)
+		}
+	}
+	r.budget.Ordering += error.staying + begin + end - r.before.end
+	r.before.h, r.before.end, r.before.defect = h, end, error
+}
+
+// mostGrowth of what returns, from one step to the next.
+const mostGrowth = 4
+
 // exponential applies exp(-i tau H) of the couplings set last to the state.
 func (r *run) exponential(ctx context.Context, tau, tolerance float64) error {
 	report, err := r.propagator.Exp(ctx, r.psi, tau, tolerance, r.hamiltonian.product)
@@ -135,13 +200,32 @@ func (r *run) exponential(ctx context.Context, tau, tolerance float64) error {
 	return err
 }
 
-// setPace chooses the length of the next step: the error of one goes as h^5.
-func (r *run) setPace(h, ordering, allowed float64) {
-	change := mostChange + 0.0
-	if ordering > 0 {
-		change = cautious * math.Pow(allowed/ordering, 0.25)
+// setPace chooses the length of the next step: what is compared with what is
+// allowed goes as h^4.
+func (r *run) setPace(h, excess float64) {
+	change := float64(mostChange)
+	if excess > 0 {
+		change = cautious * math.Pow(excess, -0.25)
 	}
 	r.pace = h * min(max(change, leastChange), mostChange)
+}
+
+// firstPace lets the frequencies in the state turn by their widest angle.
+func (r *run) firstPace(ctx context.Context) error {
+	r.pace = r.Duration
+	if err := r.couplingsAt(r.tools.first, 0); err != nil {
+		return err
+	}
+	if err := r.hamiltonian.tune(ctx, r.tools.first); err != nil {
+		return err
+	}
+	if _, _, err := r.propagator.Build(ctx, r.psi, 0, 1, r.hamiltonian.product); err != nil {
+		return err
+	}
+	if f := r.propagator.Frequency(); f > 0 {
+		r.pace = cautious * widestAngle / (2 * math.Pi * f)
+	}
+	return nil
 }
 
 // prepare reads the drive at the Gauss points, and around the middle for the
@@ -203,7 +287,7 @@ func (r *run) doubled(ctx context.Context, at, h, allowed float64) (taken bool, 
 		squared += re*re + im*im
 	}
 	ordering := math.Sqrt(squared) / 15
-	if r.setPace(h, ordering, allowed); ordering > allowed {
+	if r.setPace(h, ordering/allowed); ordering > allowed {
 		r.psi.CopyFrom(start)
 		r.budget = before
 		return false, nil

@@ -233,6 +233,20 @@ func (p *Propagator) projected() (t tridiagonal, last float64) {
 	return centred(p.alpha, p.beta[:m-1]), p.beta[m-1]
 }
 
+// Frequency returns |(H - E)^2 psi|/|(H - E) psi|, E = psi.H psi/|psi|^2, for the psi
+// of the space built last: what psi mostly turns with, beside the phase of E. It is
+// 0 for an eigenvector.
+func (p *Propagator) Frequency() float64 {
+	switch m := p.Dimension(); {
+	case p.beta[0] == 0:
+		return 0
+	case m == 1:
+		return p.beta[0]
+	default:
+		return math.Hypot(math.Hypot(p.beta[0], p.alpha[1]-p.alpha[0]), p.beta[1])
+	}
+}
+
 // AdvanceTo sets dst to the approximation of exp(-i tau H) psi in the space built
 // last, tau of either sign, and returns its norm. Its error is known for |tau| up
 // to the reach. dst may be the psi given to [Propagator.Build]. Cost: as many
