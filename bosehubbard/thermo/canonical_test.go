@@ -83,6 +83,9 @@ func TestCanonicalTopOfRepulsiveRing(t *testing.T) {
 // sign: nine in ten of the 95 % bars hold the exact value (neighbouring betas move
 // together), none misses it by three bars, and at the ends it is met to rounding.
 func TestCanonicalAgainstKnownLevels(t *testing.T) {
+	if testing.Short() {
+		t.Skip("many runs")
+	}
 	inside, bars := 0, 0
 	for _, k := range knownSystems(t) {
 		width := k.levels[len(k.levels)-1] - k.levels[0]

@@ -66,6 +66,9 @@ func coverage(got, want *Curve) (inside, bins int) {
 // entropy in at least 90 % of the interior bins, but are not simply too wide; with
 // the default settings they stay below 0.1.
 func TestErrorBars(t *testing.T) {
+	if testing.Short() {
+		t.Skip("many runs")
+	}
 	inside, bins := 0, 0
 	for _, k := range knownSystems(t) {
 		opt := Options{Floor: k.levels[0], Ceiling: k.levels[len(k.levels)-1]}

@@ -69,6 +69,9 @@ func TestObservablesAddUp(t *testing.T) {
 
 // Thermal vectors against all eigenstates: the bars hold nine in ten of the values.
 func TestObservablesOfRandomVectors(t *testing.T) {
+	if testing.Short() {
+		t.Skip("many runs")
+	}
 	k := knownSystems(t)[4] // 792 states, no mirror
 	betas := []float64{-2, -0.5, -0.1, 0, 0.1, 0.5, 2}
 	got := mustCanonical(t, k.system, betas, CanonicalOptions{Observables: true, Vectors: 32})

@@ -64,6 +64,9 @@ func TestCutOffTooLow(t *testing.T) {
 
 // A hundred runs leave neither memory nor goroutines behind.
 func TestRunsDoNotGrow(t *testing.T) {
+	if testing.Short() {
+		t.Skip("many runs")
+	}
 	s := box(t, 5, -2.1, []bosehubbard.AxisTerms{{Tunnelling: 1, Tilt: 0.1}}, false, 7)
 	once := func() {
 		mustEntropy(t, s, Options{Vectors: 4, Workers: 2})
