@@ -96,12 +96,12 @@ func p95(list []time.Duration) time.Duration {
 }
 
 // Every knob of the demo, dragged on every page: 50 ms at p95 on two free cores. A
-// busy machine gets four times that, and three attempts.
+// slow or busy machine gets ten times that, and three attempts.
 func TestDragIsQuick(t *testing.T) {
 	if testing.Short() {
 		t.Skip("measures time")
 	}
-	const most = 200 * time.Millisecond
+	const most = 500 * time.Millisecond
 	b := newBench(t, setup{})
 	for _, page := range b.window.pages {
 		b.turnTo(page.Name())

@@ -60,9 +60,6 @@ var _ Picture = (*Chart)(nil)
 // Stem returns the name for files.
 func (c *Chart) Stem() string { return c.Name }
 
-// Pin keeps the curves of a chart drawn before, to be drawn dashed below these.
-func (c *Chart) Pin(before *Chart) { c.Pinned = before.Curves }
-
 // Shown returns the ranges that are shown.
 func (c *Chart) Shown() View {
 	v := c.View
