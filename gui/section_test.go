@@ -294,3 +294,15 @@ func TestModelValues(t *testing.T) {
 	}
 	b.checkLayout("with two axes")
 }
+
+// What a state costs to show with every group open.
+func BenchmarkShowAllValues(b *testing.B) {
+	bench := newBench(&testing.T{}, setup{})
+	bench.openAll()
+	state := bench.window.state
+	b.ReportAllocs()
+	for b.Loop() {
+		state.Number++
+		bench.window.Show(state)
+	}
+}

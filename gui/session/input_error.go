@@ -43,6 +43,9 @@ func (s *Session) inputError(e entry, typed string, err error) *InputError {
 // planReason says why the plan refuses a value: by what stands at its own path if
 // there is such a mistake, and else by the place of the first one.
 func (s *Session) planReason(e entry, typed string, err error, first *plan.FieldError) string {
+	if typed == "" {
+		typed = "empty"
+	}
 	if all, ok := errors.AsType[plan.Errors](err); ok {
 		for _, one := range all {
 			if one.Path == e.SetPath || one.Path == e.Path {

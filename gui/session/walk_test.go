@@ -43,7 +43,7 @@ var walkTexts = []string{
 func (w *walker) step() {
 	s, r := w.s, w.random
 	id, text := w.anyField(), walkTexts[r.IntN(len(walkTexts))]
-	switch action := r.IntN(20); action {
+	switch action := r.IntN(21); action {
 	case 0, 1, 2, 3:
 		w.note("commit %s %q: %v", id, text, s.Commit(id, text))
 	case 4:
@@ -85,6 +85,11 @@ func (w *walker) step() {
 		w.note("revert, unit %s", id)
 	case 19:
 		w.open()
+	case 20:
+		if actions := allActions(s.State()); len(actions) > 0 {
+			id := actions[r.IntN(len(actions))]
+			w.note("%s: %v", id, s.Do(id))
+		}
 	}
 }
 
