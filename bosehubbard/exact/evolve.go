@@ -63,10 +63,14 @@ type ErrorBudget struct {
 
 	// Krylov is the sum of the bounds of the errors of all exponentials.
 	Krylov float64
+
+	// Limits is what is missed by limiting the energies of number states to where the
+	// state has weight, in all steps.
+	Limits float64
 }
 
-// Sum returns the sum of both.
-func (b ErrorBudget) Sum() float64 { return b.Ordering + b.Krylov }
+// Sum returns the sum of the three.
+func (b ErrorBudget) Sum() float64 { return b.Ordering + b.Krylov + b.Limits }
 
 // NewEvolution starts from the number state with the given atoms per site.
 //
@@ -182,7 +186,7 @@ func newEvolution(ctx context.Context, l *lattice.Lattice, m *bosehubbard.Model,
 	}
 	var err error
 	for _, d := range tries {
-		vectors := 2*(d+1+1+scratchVectors) + 2*l.Axes + 2 + stepperTables
+		vectors := 2*(d+1+1+scratchVectors) + 2*l.Axes + 3 + stepperTables
 		e.hamiltonian, err = newMoving(ctx, l, atoms, workers, fock.Options{MemoryBytes: opt.MemoryBytes, Vectors: vectors, Parity: parity})
 		if err == nil {
 			e.allocate(d, workers)

@@ -30,7 +30,9 @@ type moving struct {
 	scale float64 // H has scale times the hops
 
 	tables   [][]float64 // of V_a, F_a and U, in the order of couplings; nil where not needed
+	energies []float64   // the diagonal of H
 	diagonal []float64   // the same, or what is left of it within limits
+	limited  bool
 
 	request fock.Product
 	dst, x  krylov.Vector
@@ -57,7 +59,7 @@ func newMoving(ctx context.Context, l *lattice.Lattice, atoms, workers int, opt 
 		return nil, err
 	}
 	n := h.hops.Len()
-	h.diagonal = make([]float64, n)
+	h.energies, h.diagonal = make([]float64, n), make([]float64, n)
 	h.partial = make([]float64, (n+diagonalBlock-1)/diagonalBlock)
 	h.do = h.diagonalBlock
 	h.request = fock.Product{Dst: make([][]float64, 2), X: make([][]float64, 2), XY: make([]float64, 2)}
@@ -164,7 +166,7 @@ func (h *moving) find(ctx context.Context, state []int) (int, error) {
 	panic("exact: a mirrored state is not in the even sector")
 }
 
-// tune sets the couplings.
+// tune sets the couplings, without limits.
 func (h *moving) tune(ctx context.Context, c couplings) error {
 	j := c.tunnelling()
 	h.scale = j[largest(j)]
@@ -181,7 +183,9 @@ func (h *moving) tune(ctx context.Context, c couplings) error {
 			}
 		}
 	}
-	h.diagonalTo(h.diagonal, c)
+	h.diagonalTo(h.energies, c)
+	copy(h.diagonal, h.energies)
+	h.limited = false
 	return nil
 }
 

@@ -29,6 +29,11 @@ type stepper struct {
 	nodes  [2]couplings // at the Gauss points
 	first  couplings    // X1
 	second couplings    // X2
+
+	reach, bound float64 // of the Krylov space of the first exponential
+	missed       float64 // by its limits
+
+	limiter
 	estimate
 }
 
@@ -36,7 +41,7 @@ func newStepper(couplingCount, length int) stepper {
 	make := func() couplings { return make(couplings, couplingCount) }
 	return stepper{
 		nodes: [2]couplings{make(), make()}, first: make(), second: make(),
-		estimate: newEstimate(make, length),
+		limiter: limiter{trust: mostTrust}, estimate: newEstimate(make, length),
 	}
 }
 
@@ -116,12 +121,8 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	if !s.proportional() {
 		return r.doubled(ctx, at, h, allowed)
 	}
-	if err := r.hamiltonian.tune(ctx, s.first); err != nil {
-		return false, err
-	}
-	tau, tolerance := math.Pi*h, krylovShare*allowed/2
-	reach, bound, err := r.propagator.Build(ctx, r.psi, tau, tolerance, r.hamiltonian.product)
-	if err != nil {
+	limits := r.before.h > 0 // the state has settled into the first step
+	if err := r.first(ctx, h, limits); err != nil {
 		return false, err
 	}
 	error, err := r.estimated(ctx, h)
@@ -138,20 +139,73 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	if r.setPace(h, excess); excess > 1 {
 		return false, nil
 	}
+	fine, err := r.exponentials(ctx, h)
+	if err == nil && !fine {
+		r.count.rejected++
+		if err = r.first(ctx, h, false); err == nil {
+			_, err = r.exponentials(ctx, h)
+		}
+	}
 	r.account(h, error)
-	if _, err := r.propagator.AdvanceTo(ctx, r.psi, reach); err != nil {
+	return true, err
+}
+
+// first builds the Krylov space of the first exponential of a step, within limits
+// if they are asked for.
+func (r *run) first(ctx context.Context, h float64, limits bool) (err error) {
+	s := &r.tools
+	if err := r.hamiltonian.tune(ctx, s.first); err != nil {
+		return err
+	}
+	if limits {
+		s.limiter.choose(r.hamiltonian.energies, r.psi, h, s.limiter.trust*limitedShare*r.Tolerance*h/r.Duration)
+		r.hamiltonian.limit(s.limiter.low, s.limiter.high)
+	}
+	s.missed = r.hamiltonian.beyond(r.psi, h)
+	s.reach, s.bound, err = r.propagator.Build(ctx, r.psi, math.Pi*h, r.krylovTolerance(h), r.hamiltonian.product)
+	return err
+}
+
+// krylovTolerance is that of one of the exponentials of a step.
+func (r *run) krylovTolerance(h float64) float64 {
+	return krylovShare * r.Tolerance * h / r.Duration / 2
+}
+
+// exponentials applies both to the state, the first from the Krylov space built
+// last. If the limits turn out to miss too much, it leaves the state as it was.
+func (r *run) exponentials(ctx context.Context, h float64) (fine bool, err error) {
+	s := &r.tools
+	tau, tolerance := math.Pi*h, r.krylovTolerance(h)
+	limits, start, before := r.hamiltonian.limited, r.scratch[0], r.budget
+	if limits {
+		start.CopyFrom(r.psi)
+	}
+	if _, err := r.propagator.AdvanceTo(ctx, r.psi, s.reach); err != nil {
 		return false, err
 	}
-	r.budget.Krylov += bound
-	if reach < tau {
-		if err := r.exponential(ctx, tau-reach, tolerance*(1-reach/tau)); err != nil {
+	r.budget.Krylov += s.bound
+	if s.reach < tau {
+		if err := r.exponential(ctx, tau-s.reach, tolerance*(1-s.reach/tau)); err != nil {
 			return false, err
 		}
 	}
 	if err := r.hamiltonian.tune(ctx, s.second); err != nil {
 		return false, err
 	}
-	return true, r.exponential(ctx, tau, tolerance)
+	if limits {
+		r.hamiltonian.limit(s.limiter.low, s.limiter.high)
+	}
+	if err := r.exponential(ctx, tau, tolerance); err != nil || !limits {
+		return true, err
+	}
+	missed := max(s.missed, r.hamiltonian.beyond(r.psi, h))
+	if s.limiter.judge(missed, limitedShare*r.Tolerance*h/r.Duration) {
+		r.psi.CopyFrom(start)
+		r.budget = before
+		return false, nil
+	}
+	r.budget.Limits += missed
+	return true, nil
 }
 
 // estimated returns the error of a step with some caution. After one whose error is
