@@ -67,7 +67,7 @@ func (m *Ideal) Valid(mu, beta float64) error {
 //	n = int d^dq/(2 pi)^d 1/(exp(beta (E(q) - mu)) - 1)
 //
 // to about 1e-9, on three axes 1e-6. mu lies below the band for T > 0 and above it for T < 0; at T = 0
-// that means an empty lattice. Cost: up to 160, 2,080 and 5,984 points of the zone in
+// that means an empty lattice. Cost: up to 160, 1,176 and 5,984 points of the zone in
 // one, two and three equal axes; no allocation.
 //
 // It returns an *InputError, or an *InvalidError where mu lies in the band, with U of

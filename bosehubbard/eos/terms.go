@@ -134,3 +134,14 @@ func rise(hops []float64, q float64) float64 {
 	}
 	return sum
 }
+
+// squares returns the sum of J^2 over the bonds of a site, each counted once.
+func (t Terms) squares() float64 {
+	sum := 0.0
+	for _, hops := range t.Hops {
+		for _, j := range hops {
+			sum += j * j
+		}
+	}
+	return sum
+}

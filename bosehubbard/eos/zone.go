@@ -23,7 +23,7 @@ type zone struct {
 }
 
 // nodes is the number of points of the rule by the number of axes.
-var nodes = [4]int{0, 160, 64, 32}
+var nodes = [4]int{0, 160, 48, 32}
 
 func newZone(b rising) *zone {
 	axes := len(b.hops)
