@@ -21,12 +21,15 @@
 //	Ideal        no interaction; exact for U = 0
 //	HartreeFock  normal gas with the mean-field shift 2 U n
 //	Bogoliubov   superfluid, one loop about the mean field
+//	Atomic       sites without tunnelling, and its second order
+//	Gutzwiller   one site in the field of its neighbours
 //
-// Every model is derived from one grand
+// Chooser asks all and gives their spread. Every model is derived from one grand
 // potential, so that dn/dT at fixed mu is ds/dmu at fixed T in each of them.
 //
 // Models own their scratch: one per goroutine.
 //
-// References: Braun et al., Science 339, 52 (2013), for the ideal gas at T < 0; the rest
-// is textbook material, from memory, or derived.
+// References: Braun et al., Science 339, 52 (2013), for the ideal gas at T < 0; Freericks
+// and Monien, EPL 26, 545 (1994), for the expansion in the tunnelling; the rest is
+// textbook material, from memory, or derived.
 package eos
