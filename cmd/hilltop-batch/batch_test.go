@@ -217,6 +217,39 @@ func TestExactStates(t *testing.T) {
 	}
 }
 
+// TestExactThermodynamics: the ring of four with U = 4J at beta = -0.2, 0, 0.5 and
+// the infinite-temperature mean of six sites, U N(N-1)/(L+1) (exact
+// diagonalisation outside this project; the mean is derived).
+func TestExactThermodynamics(t *testing.T) {
+	answer := object(t, 0, "exact", "--sites", "4", "--atoms", "4", "--interaction", "4", "--ring", "--beta", "-0.2,0,0.5")
+	for i, want := range []struct{ beta, energy, entropy, variance float64 }{
+		{-0.2, 20.94479910, 2.47022292, 38.45813197}, {0, 9.6, math.Log(35), 52.29714286}, {0.5, -1.94884884, 1.46604423, 8.76444633},
+	} {
+		got := answer["canonical"].([]any)[i].(map[string]any)
+		need(t, "canonical", got, "beta", "energy", "entropy", "variance")
+		for key, value := range map[string]float64{"beta": want.beta, "energy": want.energy, "entropy": want.entropy, "variance": want.variance} {
+			if math.Abs(got[key].(float64)-value) > 1e-6 {
+				t.Errorf("beta %g: %s = %v, want %.9g", want.beta, key, got[key], value)
+			}
+		}
+	}
+	answer = object(t, 0, "exact", "--sites", "6", "--atoms", "6", "--interaction", "4", "--ring", "--entropy", "--volume-entropy")
+	curve := answer["entropy"].(map[string]any)
+	need(t, "entropy", curve, "energy", "entropy", "beta", "volume_entropy")
+	if mean := curve["mean"].(float64); math.Abs(mean-120.0/7) > 1e-6 {
+		t.Errorf("mean %g, want 4*6*5/7", mean)
+	}
+	if peak := curve["peak"].(float64); peak < 8 || peak > 16 {
+		t.Errorf("beta is 0 at %g, want about 12 (Tr H/D is 17.14)", peak)
+	}
+	for _, args := range [][]string{{"--beta", "NaN"}, {"--volume-entropy"}, {"--entropy", "--second-tunnelling", "0.1"}} {
+		code, _, stderr := call(t, append([]string{"exact", "--sites", "3", "--atoms", "2"}, args...)...)
+		if code != 2 || !strings.Contains(stderr, strings.TrimPrefix(args[0], "--")) {
+			t.Errorf("%v: exit %d, %q", args, code, stderr)
+		}
+	}
+}
+
 // TestFailures: kind and exit code of everything that can go wrong; the message
 // names the flag, key or file.
 func TestFailures(t *testing.T) {

@@ -12,21 +12,23 @@ import (
 
 // exactAnswer holds the keys of the verb exact; totals in the unit of the flags.
 type exactAnswer struct {
-	Dimension       int         `json:"dimension"`
-	Sector          string      `json:"sector"` // what was searched
-	Floor           float64     `json:"floor"`
-	Ceiling         float64     `json:"ceiling"`
-	FloorResidual   float64     `json:"floor_residual"`
-	CeilingResidual float64     `json:"ceiling_residual"`
-	FloorParity     int         `json:"floor_parity,omitempty"` // +1, -1: sector of the mirror it was found in
-	CeilingParity   int         `json:"ceiling_parity,omitempty"`
-	FloorCutoff     *float64    `json:"floor_cutoff,omitempty"` // with --max-occupation
-	CeilingCutoff   *float64    `json:"ceiling_cutoff,omitempty"`
-	FloorState      *stateKeys  `json:"floor_state,omitempty"` // with --states
-	CeilingState    *stateKeys  `json:"ceiling_state,omitempty"`
-	Iterations      int         `json:"iterations"`
-	Seconds         seconds     `json:"seconds"`
-	Cautions        []exactNote `json:"cautions,omitempty"`
+	Dimension       int          `json:"dimension"`
+	Sector          string       `json:"sector"` // what was searched
+	Floor           float64      `json:"floor"`
+	Ceiling         float64      `json:"ceiling"`
+	FloorResidual   float64      `json:"floor_residual"`
+	CeilingResidual float64      `json:"ceiling_residual"`
+	FloorParity     int          `json:"floor_parity,omitempty"` // +1, -1: sector of the mirror it was found in
+	CeilingParity   int          `json:"ceiling_parity,omitempty"`
+	FloorCutoff     *float64     `json:"floor_cutoff,omitempty"` // with --max-occupation
+	CeilingCutoff   *float64     `json:"ceiling_cutoff,omitempty"`
+	FloorState      *stateKeys   `json:"floor_state,omitempty"` // with --states
+	CeilingState    *stateKeys   `json:"ceiling_state,omitempty"`
+	Iterations      int          `json:"iterations"`
+	Entropy         *entropyKeys `json:"entropy,omitempty"`   // with --entropy
+	Canonical       []canonical  `json:"canonical,omitempty"` // with --beta
+	Seconds         seconds      `json:"seconds"`
+	Cautions        []exactNote  `json:"cautions,omitempty"`
 }
 
 type seconds struct {
@@ -81,6 +83,9 @@ func (p *program) runExact(cmd *cobra.Command, f exactFlags) error {
 		return err
 	}
 	answer := answerOf(ends, f)
+	if err := answer.addThermo(cmd.Context(), s, f, bar); err != nil {
+		return err
+	}
 	if p.json {
 		return p.print(answer)
 	}
@@ -136,6 +141,7 @@ func (a *exactAnswer) write(out io.Writer) error {
 			fmt.Fprintf(&b, "kinetic, interaction, potential  %.6g, %.6g, %.6g\n", e.state.Kinetic, e.state.Interaction, e.state.Potential)
 		}
 	}
+	a.writeThermo(&b)
 	for _, c := range a.Cautions {
 		fmt.Fprintf(&b, "caution: %s\n", c.Text)
 	}

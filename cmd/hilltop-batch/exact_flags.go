@@ -22,6 +22,8 @@ type exactFlags struct {
 	second                             float64
 	most, workers                      int
 	momentum                           []int
+	entropy, volume                    bool
+	beta                               []float64
 }
 
 func (f *exactFlags) register(cmd *cobra.Command) {
@@ -39,6 +41,9 @@ func (f *exactFlags) register(cmd *cobra.Command) {
 	flags.BoolVar(&f.states, "states", false, "describe the states at both ends; twice the time")
 	flags.IntSliceVar(&f.momentum, "momentum", nil, "only the states of quasi-momentum 2 pi m/L, one m for each closed axis: 1 or 0,2")
 	flags.IntVar(&f.workers, "workers", 0, "processors to use, 0 for all; the answer is the same")
+	flags.BoolVar(&f.entropy, "entropy", false, "density of states: S(E) and beta(E) = dS/dE")
+	flags.BoolVar(&f.volume, "volume-entropy", false, "with --entropy: also the logarithm of all states below E (Gibbs)")
+	flags.Float64SliceVar(&f.beta, "beta", nil, "canonical averages at these beta of either sign, answered in order: -0.5,0,0.5")
 	must(cmd.MarkFlagRequired("atoms"))
 	cmd.MarkFlagsMutuallyExclusive("sites", "grid")
 	cmd.MarkFlagsOneRequired("sites", "grid")
@@ -65,6 +70,9 @@ func (f exactFlags) system() (exactSystem, error) {
 	if err := f.check(); err != nil {
 		return s, err
 	}
+	if err := f.checkThermo(); err != nil {
+		return s, err
+	}
 	graph, err := f.graph()
 	if err != nil {
 		return s, err
@@ -85,6 +93,22 @@ func (f exactFlags) system() (exactSystem, error) {
 		err = s.terms.AddTunnelling(graph.SecondBonds(), second)
 	}
 	return s, err
+}
+
+// checkThermo refuses what the averages over the whole spectrum do not know.
+func (f exactFlags) checkThermo() error {
+	for _, beta := range f.beta {
+		if math.IsNaN(beta) || math.IsInf(beta, 0) {
+			return fmt.Errorf("--beta %g: want finite numbers", beta)
+		}
+	}
+	if !f.entropy && f.volume {
+		return fmt.Errorf("--volume-entropy: want it together with --entropy")
+	}
+	if (f.entropy || f.beta != nil) && (f.second != 0 || f.momentum != nil) {
+		return fmt.Errorf("--entropy and --beta: want them without --second-tunnelling and --momentum")
+	}
+	return nil
 }
 
 // check refuses numbers that make no sense for any graph.
