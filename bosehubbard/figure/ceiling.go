@@ -51,6 +51,11 @@ func (c *Ceiling) Table() Table {
 	for _, e := range c.Report.Ceiling.Exact {
 		t.row("exact", sitesName(e.Sites), e.Floor, e.Ceiling, none, plain(float64(e.Atoms))+" atoms")
 	}
+	if l := c.Options.Ladder; l != nil {
+		for i, r := range l.rows() {
+			t.row("level", plain(float64(i+1)), none, none, r[0], "degeneracy "+plain(r[1])+", share "+plain(r[2]))
+		}
+	}
 	for _, m := range sizesOf(c.Report, c.Options.LatticeAxes) {
 		note := ""
 		if m.Name == "|V|" {
@@ -58,7 +63,25 @@ func (c *Ceiling) Table() Table {
 		}
 		t.row("size", m.Name, none, none, m.Hz, note)
 	}
+	c.Options.Entropy.addTo(&t)
 	return t
+}
+
+// addTo appends S(E) to a table, in columns of its own.
+func (c *EntropyCurve) addTo(t *Table) {
+	if c == nil {
+		return
+	}
+	wide := len(t.Columns)
+	t.Columns = append(t.Columns, Column{"energy per atom", "Hz"}, Column{"entropy per atom", "kB"}, Column{"dS/dE", "kB/Hz"})
+	for i := range t.Rows {
+		t.Rows[i] = append(t.Rows[i], "", "", "")
+	}
+	for i, hz := range c.Energy {
+		row := make([]string, wide, wide+3)
+		row[0], row[1] = "entropy", c.Name
+		t.Rows = append(t.Rows, append(row, plain(hz), plain(c.Entropy[i]), plain(c.Beta[i])))
+	}
 }
 
 // number is a bound for a table: NaN where it was not computed.
@@ -103,6 +126,12 @@ func (g *Geometry) Read(p Point) (r Reading, ok bool) {
 	}
 	r = Reading{Y: g.Scale.Hz(p.Y), At: p}
 	r.Text = "E/N " + g.unit.signed(r.Y, 4)
+	if e := g.Entropy; e != nil && p.X >= e.Box.X0 && p.X <= e.Box.X1 {
+		if q, ok := e.at(r.Y); ok {
+			r.X = q.Entropy
+			r.Text += ", " + e.Says(q)
+		}
+	}
 	if s := g.Slope; s != nil && p.X >= s.Box.X0 && p.X <= s.Box.X1 {
 		r.X = s.Site(p.X)
 		r.Text += " at " + Number(r.X, 3) + " sites along " + s.Axis

@@ -16,6 +16,7 @@ func (g *Geometry) Draw(c vg.Canvas, f Frame, s Style) {
 	p.fill(g.Ground, ink.Panel)
 	g.drawAxis(p)
 	g.drawHill(p)
+	g.drawEntropy(p)
 	bars := append(append([]Bar(nil), g.Bars...), g.Total)
 	for i := range bars {
 		g.drawBody(p, &bars[i])
@@ -34,6 +35,7 @@ func (g *Geometry) Draw(c vg.Canvas, f Frame, s Style) {
 		p.frame(stroke{width: 1, color: ink.Soft, dash: dashes[Pinned]}, r)
 	}
 	g.drawState(p)
+	g.drawTangent(p)
 	g.drawSizes(p)
 	p.drawLabels(g.Labels)
 }
@@ -47,13 +49,17 @@ func (g *Geometry) drawAxis(p *pen) {
 	for _, t := range g.Ticks {
 		p.line(edge, Point{g.Plot.X0 - 4, t.Y}, Point{g.Plot.X0, t.Y})
 	}
-	p.line(edge, Point{g.Ruler.X0, g.Sky.Y1}, Point{g.Ruler.X0, g.Ground.Y0})
+	g.drawRuler(p)
 }
 
 // drawBody draws the bar between its ends and the strips beyond them.
 func (g *Geometry) drawBody(p *pen, b *Bar) {
 	ink := p.style.Palette
 	body := b.Body()
+	if b.Term == "total" && g.Rungs != nil {
+		g.drawLadder(p)
+		return
+	}
 	if b.Still {
 		p.frame(stroke{width: 1.5, color: ink.Soft}, body)
 		return
@@ -101,6 +107,10 @@ func (g *Geometry) drawStrips(p *pen, b *Bar, up bool, shade color.Color) {
 // drawEnds draws lids, split lids and cuts.
 func (g *Geometry) drawEnds(p *pen, b *Bar) {
 	if b.Still {
+		return
+	}
+	if g.Rungs != nil {
+		g.drawLids(p, *b)
 		return
 	}
 	g.drawEnd(p, b, b.Upper, 1)
@@ -185,6 +195,9 @@ func (g *Geometry) drawState(p *pen) {
 // drawSizes draws the log line of sizes.
 func (g *Geometry) drawSizes(p *pen) {
 	ink, line := p.style.Palette, &g.Size
+	if len(line.Marks)+len(line.Zero) == 0 {
+		return
+	}
 	edge := stroke{width: 1, color: ink.Edge}
 	p.line(edge, Point{line.X0, line.Y}, Point{line.X1, line.Y})
 	for d := line.Low; d <= line.High; d++ {

@@ -78,7 +78,7 @@ func (b *builder) toHold() float64 {
 			return largest
 		}
 	}
-	if b.options.ScaleTo == "total" {
+	if b.options.ScaleTo == "total" || b.options.Ladder != nil {
 		largest = 0
 		hold(c.Total.Floor, c.Total.Ceiling)
 		return largest

@@ -26,7 +26,9 @@ type Geometry struct {
 	Carry   []Point // the sum, from the kinetic lid to the total's
 	Ceiling Line    // from the total's lid to the ruler; no length where open
 	State   *Line
-	Slope   *Slope // the hill; nil where there is none
+	Slope   *Slope        // the hill; nil where there is none
+	Entropy *EntropyPanel // S(E); nil where it is not known
+	Rungs   []Rung        // of levels, from the first given
 	Size    SizeLine
 	Ticks   []Tick // of the energy axis
 	Pinned  []Rect
@@ -100,6 +102,10 @@ type CeilingOptions struct {
 	Pinned *report.Report
 	// LatticeAxes names the axis of every entry of lattice.axes; nil is x, y, z.
 	LatticeAxes []string
+	// Entropy is S(E) of what stands for the cloud; nil where it is not known.
+	Entropy *EntropyCurve
+	// Ladder is drawn in place of the bars for levels.
+	Ladder *Ladder
 	// HillAxis is the axis of the hill; empty chooses the one most in danger.
 	HillAxis string
 }
@@ -108,12 +114,18 @@ type CeilingOptions struct {
 func CeilingGeometry(r *report.Report, f Frame, s Style, o CeilingOptions) *Geometry {
 	b := builder{report: r, style: s, options: o, g: &Geometry{text: s.text()}}
 	b.g.Upwards = r.AimSign != "positive"
+	b.curve = o.Entropy.counted()
 	b.place(f)
 	b.chooseScale()
-	b.bars()
-	b.carry()
+	if o.Ladder != nil {
+		b.ladder()
+	} else {
+		b.bars()
+		b.carry()
+	}
 	b.ceiling()
 	b.hill()
+	b.entropy()
 	b.sizes()
 	b.pinned()
 	b.label()
@@ -126,6 +138,7 @@ type builder struct {
 	style   Style
 	options CeilingOptions
 	g       *Geometry
+	curve   *EntropyCurve // the part that is shown; nil for none
 	unit    measureOf
 	notes   []string // lines below the names: why axes do not move
 	names   float64  // upper edge of the names below the plot
@@ -150,15 +163,39 @@ func (b *builder) place(f Frame) {
 	left, right := 64*t, f.Width-92*t
 	g.Plot = Rect{left, 0, right, bottom}
 	g.Ruler = Rect{right, 0, f.Width, bottom}
-	g.Terms = g.Plot
-	if f.Width >= 620*t {
-		// The shares of the terms and the hill are 46 and 27; the rest is free.
-		g.Terms.X1 = left + (right-left)*46/(46+27)
-		g.Hill = Rect{g.Terms.X1, 0, right, bottom}
-	}
+	b.divide(f.Width >= 620*t && b.options.Ladder == nil)
 	band := math.Max(0.16*bottom, 56)
 	g.Sky = Rect{left, 0, right, band}
 	g.Ground = Rect{left, bottom - band, right, bottom}
+}
+
+// Shares of the width inside.
+const (
+	termsShare   = 46.0
+	hillShare    = 27.0
+	entropyShare = 27.0
+)
+
+// divide gives the terms, the hill and S(E) their columns; what is not shown leaves
+// its share to the others.
+func (b *builder) divide(hill bool) {
+	g := b.g
+	shares := [...]float64{termsShare, 0, 0}
+	if hill {
+		shares[1] = hillShare
+	}
+	if b.curve != nil {
+		shares[2] = entropyShare
+	}
+	one := g.Plot.Width() / (shares[0] + shares[1] + shares[2])
+	g.Terms, g.Hill = g.Plot, Rect{}
+	g.Terms.X1 = g.Plot.X0 + shares[0]*one
+	if hill {
+		g.Hill = Rect{g.Terms.X1, 0, g.Terms.X1 + shares[1]*one, g.Plot.Y1}
+	}
+	if b.curve != nil {
+		g.Entropy = &EntropyPanel{Box: Rect{g.Plot.X1 - shares[2]*one, 0, g.Plot.X1 - 8, g.Plot.Y1}}
+	}
 }
 
 // reasons wraps why axes do not move into lines.

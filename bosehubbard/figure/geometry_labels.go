@@ -12,11 +12,16 @@ func (b *builder) label() {
 	b.labelAxis()
 	b.labelNames()
 	b.labelCeiling()
+	b.labelRuler()
 	b.keepBarsFree()
 	b.labelFlag()
+	b.labelRungs()
+	b.keepEntropyFree()
+	b.labelState()
 	b.keepLinesFree()
 	b.labelEnds()
 	b.labelHill()
+	b.labelEntropy()
 	b.labelUnbounded()
 	b.labelSizes()
 	b.g.Labels = b.placer.labels
@@ -114,7 +119,11 @@ func (b *builder) labelNames() {
 	if last > first {
 		put((first+last)/2, "trap", "V")
 	}
-	put(g.Total.Centre(), "total", "sum")
+	if b.options.Ladder != nil {
+		put(g.Total.Centre(), "levels")
+	} else {
+		put(g.Total.Centre(), "total", "sum")
+	}
 	for i, note := range b.notes {
 		y := b.names + 2*row + 6 + float64(i)*row
 		b.placer.put(SoftWord, note, anchor{Point{8, y}, 0, 0})
@@ -144,7 +153,11 @@ func (b *builder) labelCeiling() {
 func (b *builder) ends() {
 	g := b.g
 	x, row := g.Ruler.X0+8, 15*b.style.text()
-	b.placer.put(SoftWord, "−1/T", anchor{Point{x, g.Sky.Y0 + 6}, 0, 0})
+	name := "−1/T"
+	if g.Entropy != nil {
+		name += ", " + g.Entropy.Unit
+	}
+	b.placer.put(SoftWord, name, anchor{Point{x, g.Sky.Y0 + 6}, 0, 0})
 	if g.Total.Upper.Kind != Strips {
 		b.placer.put(SoftNumber, "−0", anchor{Point{x, g.Sky.Y0 + 6 + row}, 0, 0})
 	}
@@ -187,7 +200,9 @@ func (b *builder) labelEnds() {
 			b.labelEnd(bar, b.other(bar), SoftNumber)
 		}
 	}
-	b.labelEnd(&b.g.Total, b.other(&b.g.Total), SoftNumber)
+	if b.options.Ladder == nil {
+		b.labelEnd(&b.g.Total, b.other(&b.g.Total), SoftNumber)
+	}
 }
 
 func (b *builder) other(bar *Bar) *End {

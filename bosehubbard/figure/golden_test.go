@@ -37,7 +37,7 @@ func handmade(change func(*report.Report)) *report.Report {
 	return r
 }
 
-func goldens() map[string]struct {
+func goldens(t *testing.T) map[string]struct {
 	p Picture
 	s Style
 } {
@@ -56,6 +56,7 @@ func goldens() map[string]struct {
 		r.Stages[0].CurvatureHz = []float64{0.4, 0.4, 0.5}
 	})
 	state := 1200.0
+	_, ladder := twoLevels(t)
 	wave := &Chart{
 		Name: "wave", Title: "Three axes", X: Axis{Label: "depth", Unit: "Er"}, Y: Axis{Label: "energy", Unit: "Hz", Kind: Log},
 		Rules: []Rule{{Name: "load", X: 22, Dash: Pinned}},
@@ -78,6 +79,8 @@ func goldens() map[string]struct {
 		"ceiling-open-dark":    {&Ceiling{open, CeilingOptions{Unit: Tunnelling}}, dark},
 		"ceiling-leaky-light":  {&Ceiling{leaky, CeilingOptions{}}, Style{Palette: Light(), Text: 1.5}},
 		"ceiling-far-dark":     {&Ceiling{far, CeilingOptions{HalfRange: 2000}}, dark},
+		"ceiling-entropy-dark": {&Ceiling{handmade(nil), CeilingOptions{State: &state, Entropy: parabola(-200, 1500)}}, dark},
+		"ceiling-levels-light": {ladder, light},
 		"chart-light":          {wave, light},
 		"map-dark":             {verdictMap().Chart(), dark},
 	}
@@ -88,7 +91,7 @@ func goldens() map[string]struct {
 // more than half the range.
 func TestGoldenPictures(t *testing.T) {
 	r := NewRenderer()
-	for name, g := range goldens() {
+	for name, g := range goldens(t) {
 		path := filepath.Join("testdata", name+".png")
 		img := r.Image(g.p, Frame{Width: 760, Height: 400}, g.s)
 		if *update {
