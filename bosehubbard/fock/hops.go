@@ -2,22 +2,29 @@ package fock
 
 import "math"
 
-// appendHops adds the hops that lead to a state of the given rank, which H being
-// symmetric are those that lead away from it.
-func (p *part) appendHops(s *sector, state []int, rank int) {
-	for _, h := range p.bonds {
-		for _, way := range [2][2]int{{h.low, h.high}, {h.high, h.low}} {
+// appendHops adds the hops that lead to a state, which H being symmetric are those
+// that lead away from it.
+func (p *part) appendHops(s *sector, state []int) {
+	isOpen := false // whether the last pair has room
+	for _, b := range p.bonds {
+		for _, way := range [2][2]int{{b.low, b.high}, {b.high, b.low}} {
 			from, to := way[0], way[1]
 			if p.way(state[from], state[to]) == 0 {
 				continue
 			}
-			element := h.amplitude * math.Sqrt(float64(state[from])*float64(state[to]+1))
+			element := b.amplitude * math.Sqrt(float64(state[from])*float64(state[to]+1))
 			state[from]--
 			state[to]++
-			s.from = append(s.from, int32(p.rank(state)))
-			s.element = append(s.element, element)
+			rank := uint32(p.rank(state))
 			state[from]++
 			state[to]--
+			if isOpen {
+				last := &s.pairs[len(s.pairs)-1]
+				last.second, last.fromSecond = element, rank
+			} else {
+				s.pairs = append(s.pairs, hopPair{first: element, fromFirst: rank, fromSecond: rank})
+			}
+			isOpen = !isOpen
 		}
 	}
 }

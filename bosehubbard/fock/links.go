@@ -1,49 +1,51 @@
 package fock
 
-// leftAndLinks adds to a row the hops inside the left part, which bring whole rows
-// of the same block, and the hops across the cut, which bring rows of other ones.
-func (j *job) leftAndLinks(row int) {
-	y := j.row(j.dst, row)
-	s := j.rowSector
-	at := s.span[row]
-	from := s.from[at.begin : at.begin+at.length]
-	element := s.element[at.begin : at.begin+at.length]
-	k := 0
-	for ; k+4 <= len(from); k += 4 {
-		addFour(y, j.row(j.x, int(from[k])), j.row(j.x, int(from[k+1])), j.row(j.x, int(from[k+2])), j.row(j.x, int(from[k+3])),
-			j.a*element[k], j.a*element[k+1], j.a*element[k+2], j.a*element[k+3])
-	}
-	if k+2 <= len(from) {
-		addTwo(y, j.row(j.x, int(from[k])), j.row(j.x, int(from[k+1])), j.a*element[k], j.a*element[k+1])
-		k += 2
-	}
-	if k < len(from) {
-		addOne(y, j.row(j.x, int(from[k])), j.a*element[k])
-	}
+// cutHops adds to a row the hops across the cut, which bring rows of other blocks.
+// Two that start at the first state are added together.
+func (j *job) cutHops(y []float64, row int) {
+	var held strand
 	for i := range j.links {
-		if l := &j.links[i]; !l.flipped {
-			j.addLink(y, l, row)
+		l := &j.links[i]
+		x, a := j.source(l, row)
+		if x == nil {
+			continue
 		}
+		if l.col == nil {
+			addOne(y, x, a)
+			continue
+		}
+		for _, r := range l.col.runs {
+			s := strand{x[r.from : r.from+r.length], l.col.element[r.to : r.to+r.length], a}
+			switch {
+			case r.to > 0:
+				s.add(y[r.to : r.to+r.length])
+			case held.x == nil:
+				held = s
+			default:
+				addTwoStrands(y, held, s)
+				held.x = nil
+			}
+		}
+	}
+	if held.x != nil {
+		held.add(y[:len(held.x)])
 	}
 }
 
-// addLink adds what one hop across the cut brings to a row.
-func (j *job) addLink(y []float64, l *link, row int) {
-	factor := j.a * l.factor
+// source returns the row that a link brings to a row, nil if there is none, and its
+// factor without that of the columns.
+func (j *job) source(l *link, row int) (x []float64, a float64) {
+	if l.flipped {
+		return nil, 0
+	}
+	a = j.a * l.factor
 	if l.row != nil {
-		factor *= l.row.element[row]
+		a *= l.row.element[row]
 		if row = int(l.row.from[row]); row < 0 {
-			return
+			return nil, 0
 		}
 	}
-	x := j.blocks[l.source].row(j.x, row)
-	if l.col == nil {
-		addOne(y, x, factor)
-		return
-	}
-	for _, r := range l.col.runs {
-		addWeighted(y[r.to:r.to+r.length], x[r.from:r.from+r.length], l.col.element[r.to:r.to+r.length], factor)
-	}
+	return j.blocks[l.source].row(j.x, row), a
 }
 
 // tile is the side of the squares in which matrices are transposed: two of them
@@ -106,36 +108,4 @@ func (h *Operator) doBand(t *task, p *Product, k int) (sums [2]float64) {
 		}
 	}
 	return sums
-}
-
-// addFour computes y += a0 x0 + a1 x1 + a2 x2 + a3 x3, all of one length.
-func addFour(y, x0, x1, x2, x3 []float64, a0, a1, a2, a3 float64) {
-	x0, x1, x2, x3 = x0[:len(y)], x1[:len(y)], x2[:len(y)], x3[:len(y)]
-	for i := range y {
-		y[i] += a0*x0[i] + a1*x1[i] + a2*x2[i] + a3*x3[i]
-	}
-}
-
-// addTwo computes y += a0 x0 + a1 x1.
-func addTwo(y, x0, x1 []float64, a0, a1 float64) {
-	x0, x1 = x0[:len(y)], x1[:len(y)]
-	for i := range y {
-		y[i] += a0*x0[i] + a1*x1[i]
-	}
-}
-
-// addOne computes y += a x.
-func addOne(y, x []float64, a float64) {
-	x = x[:len(y)]
-	for i := range y {
-		y[i] += a * x[i]
-	}
-}
-
-// addWeighted computes y[i] += a s[i] x[i].
-func addWeighted(y, x, s []float64, a float64) {
-	x, s = x[:len(y)], s[:len(y)]
-	for i := range y {
-		y[i] += a * s[i] * x[i]
-	}
 }

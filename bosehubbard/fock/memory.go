@@ -117,9 +117,10 @@ func bytesWanted(sites, atoms int, opt Options) float64 {
 	return min(bytes+8*states*float64(opt.Vectors), maxBytes)
 }
 
-// Bytes of a state of one half, with its place in two ladders, and of a hop.
+// Bytes of a state of one half, with its place in two ladders and half an empty
+// place in a pair of hops, and of a hop.
 const (
-	stateBytes = 8 + 8 + 4 + 2*12
+	stateBytes = 8 + 8 + 4 + 2*12 + 6
 	hopBytes   = 12
 )
 

@@ -18,7 +18,7 @@ func TestFitCountsTheStates(t *testing.T) {
 // The need is that of bytesWanted, and one byte decides.
 func TestFitAtTheEdge(t *testing.T) {
 	need := bytesWanted(10, 10, Options{Vectors: 3})
-	if vectors := 8.0 * 92378 * 3; need < vectors || need > 1.3*vectors { // halves of 3003 states
+	if vectors := 8.0 * 92378 * 3; need < vectors || need > 1.35*vectors { // halves of 3003 states
 		t.Errorf("10 on 10 needs %g bytes, three vectors alone %g", need, vectors)
 	}
 	if _, err := Fit(10, 10, Options{MemoryBytes: uint64(need) + 1, Vectors: 3}); err != nil {
@@ -46,7 +46,7 @@ func TestFitRefusesTheImpossible(t *testing.T) {
 		// D(22, 11) = 129024480 needs 3.1 GB, D(23, 12) = 548354040 needs 13.2 GB.
 		{40, 20, 22, []string{"67.1 PB", "22 sites"}},
 		{100, 100, 16, []string{"4.527e+58 states", "1.09e+60 bytes"}},
-		{2, 1_000_000_000, 1, []string{"1000000001 states", "124 GB"}},
+		{2, 1_000_000_000, 1, []string{"1000000001 states", "130 GB"}},
 		{12, 1_000_000_000, 1, []string{"e+91 states"}},
 		{1_000_000, 1_000_000_000, 3, []string{"e+", "over 1e+300 bytes"}},
 		{math.MaxInt, math.MaxInt, 16, []string{"10^(5.553e+18) states", "over 1e+300 bytes"}},

@@ -48,8 +48,9 @@ func (b *block) row(v []float64, row int) []float64 {
 	return v[at : at+b.cols : at+b.cols]
 }
 
-// doRows computes a band of rows of vector k, and its part of the sums.
-func (h *Operator) doRows(t *task, p *Product, k int) (sums [2]float64) {
+// doRows computes a band of rows of vector k, and its part of the sums. scratch has
+// room for four rows.
+func (h *Operator) doRows(t *task, p *Product, k int, scratch []float64) (sums [2]float64) {
 	j := h.newJob(&h.blocks[t.block], p, k)
 	begin, end := j.offset+t.from*j.cols, j.offset+t.to*j.cols
 	if p.C == 0 {
@@ -61,14 +62,16 @@ func (h *Operator) doRows(t *task, p *Product, k int) (sums [2]float64) {
 	}
 	row := t.from
 	for ; row+4 <= t.to; row += 4 {
-		j.rightFour(row)
-		for r := row; r < row+4; r++ {
-			j.leftAndLinks(r)
+		z := scratch[:4*j.cols]
+		j.colSector.gatherFour(z, j.row(j.x, row), j.row(j.x, row+1), j.row(j.x, row+2), j.row(j.x, row+3))
+		for k := range 4 {
+			j.wholeRow(row+k, z[k:], 4)
 		}
 	}
 	for ; row < t.to; row++ {
-		j.rightOne(row)
-		j.leftAndLinks(row)
+		z := scratch[:j.cols]
+		j.colSector.gather(z, j.row(j.x, row))
+		j.wholeRow(row, z, 1)
 	}
 	j.flippedLinks(t.from, t.to)
 	if p.XY != nil {
@@ -80,72 +83,68 @@ func (h *Operator) doRows(t *task, p *Product, k int) (sums [2]float64) {
 	return sums
 }
 
+// wholeRow computes a row of a block. z[i*stride] is what the hops inside the right
+// part bring to column i.
+func (j *job) wholeRow(row int, z []float64, stride int) {
+	y, pairs := j.row(j.dst, row), j.rowSector.pairsOf(row)
+	s := start{
+		x: j.row(j.x, row), z: z, stride: stride, energy: j.colSector.energy,
+		own: j.a*(j.rowSector.energy[row]+j.energy) + j.b, a: j.a, c: j.c,
+	}
+	if isFour(pairs) {
+		f := j.four(pairs)
+		s.joinFour(y, &f)
+		pairs = pairs[2:]
+	} else {
+		s.join(y)
+	}
+	j.leftHops(y, pairs)
+	j.cutHops(y, row)
+}
+
 // halfRows computes a band of a square block up to what symmetrising it adds: the
 // matrix whose sum with p times its transpose is the product, p the parity.
 func (j *job) halfRows(from, to int) {
-	b, c := j.b/2, j.c/2
 	for row := from; row < to; row++ {
-		x, y := j.row(j.x, row), j.row(j.dst, row)
-		s := j.a*(j.rowSector.energy[row]+j.energy/2) + b
-		for i, v := range x {
-			y[i] = s*v + c*y[i]
+		y, pairs := j.row(j.dst, row), j.rowSector.pairsOf(row)
+		s := start{x: j.row(j.x, row), own: j.a*(j.rowSector.energy[row]+j.energy/2) + j.b/2, c: j.c / 2}
+		if isFour(pairs) {
+			f := j.four(pairs)
+			s.scaleFour(y, &f)
+			pairs = pairs[2:]
+		} else {
+			s.scale(y)
 		}
-		j.leftAndLinks(row)
+		j.leftHops(y, pairs)
+		j.cutHops(y, row)
 	}
 }
 
-// rightOne starts a row: the hops inside the right part and all energies.
-func (j *job) rightOne(row int) {
-	x, y := j.row(j.x, row), j.row(j.dst, row)
-	s := j.colSector
-	own := j.rowSector.energy[row] + j.energy
-	at := 0
-	begin := int32(0)
-	for hops, end := range s.classEnd {
-		for _, p := range s.order[begin:end] {
-			sum := (own + s.energy[p]) * x[p]
-			element := s.element[at : at+hops]
-			for i, from := range s.from[at : at+hops] {
-				sum += element[i] * x[from]
-			}
-			at += hops
-			y[p] = j.a*sum + j.b*x[p] + j.c*y[p]
-		}
-		begin = end
+// isFour says whether the first two pairs are four hops.
+func isFour(pairs []hopPair) bool { return len(pairs) >= 2 && pairs[1].second != 0 }
+
+// four takes the rows that the first two pairs of hops of the left part bring.
+func (j *job) four(pairs []hopPair) fourRows {
+	p, q := &pairs[0], &pairs[1]
+	return fourRows{
+		j.row(j.x, int(p.fromFirst)), j.row(j.x, int(p.fromSecond)), j.row(j.x, int(q.fromFirst)), j.row(j.x, int(q.fromSecond)),
+		j.a * p.first, j.a * p.second, j.a * q.first, j.a * q.second,
 	}
 }
 
-// rightFour is rightOne for four rows at once, so that each hop is read once for
-// all of them. Every row gets the same bits as from rightOne.
-func (j *job) rightFour(row int) {
-	s := j.colSector
-	n := s.count
-	x0, x1, x2, x3 := j.row(j.x, row)[:n], j.row(j.x, row+1)[:n], j.row(j.x, row+2)[:n], j.row(j.x, row+3)[:n]
-	y0, y1, y2, y3 := j.row(j.dst, row)[:n], j.row(j.dst, row+1)[:n], j.row(j.dst, row+2)[:n], j.row(j.dst, row+3)[:n]
-	energy := s.energy[:n]
-	own := j.rowSector.energy[row : row+4 : row+4]
-	e0, e1, e2, e3 := own[0]+j.energy, own[1]+j.energy, own[2]+j.energy, own[3]+j.energy
-	a, b, c := j.a, j.b, j.c
-	at := 0
-	begin := int32(0)
-	for hops, end := range s.classEnd {
-		for _, p := range s.order[begin:end] {
-			e := energy[p]
-			s0, s1, s2, s3 := (e0+e)*x0[p], (e1+e)*x1[p], (e2+e)*x2[p], (e3+e)*x3[p]
-			element := s.element[at : at+hops]
-			for i, from := range s.from[at : at+hops] {
-				v := element[i]
-				s0 += v * x0[from]
-				s1 += v * x1[from]
-				s2 += v * x2[from]
-				s3 += v * x3[from]
-			}
-			at += hops
-			y0[p] = a*s0 + b*x0[p] + c*y0[p]
-			y1[p] = a*s1 + b*x1[p] + c*y1[p]
-			y2[p] = a*s2 + b*x2[p] + c*y2[p]
-			y3[p] = a*s3 + b*x3[p] + c*y3[p]
+// leftHops adds to a row the hops inside the left part, which bring whole rows of
+// the same block.
+func (j *job) leftHops(y []float64, pairs []hopPair) {
+	for ; isFour(pairs); pairs = pairs[2:] {
+		f := j.four(pairs)
+		f.add(y)
+	}
+	for i := range pairs {
+		p := &pairs[i]
+		if p.second != 0 {
+			addTwo(y, j.row(j.x, int(p.fromFirst)), j.row(j.x, int(p.fromSecond)), j.a*p.first, j.a*p.second)
+		} else {
+			addOne(y, j.row(j.x, int(p.fromFirst)), j.a*p.first)
 		}
-		begin = end
 	}
 }

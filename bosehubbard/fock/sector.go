@@ -8,20 +8,25 @@ import (
 // sector is the part of the Hamiltonian inside one half of the sites, for a fixed
 // number of atoms there: the energies of its states and the hops between them.
 //
-// The hops of a state stand together, those of states with equally many hops one
-// after the other, so that a loop over all of them has few surprises for the
-// processor.
+// The hops of a state stand together in pairs, those of states with equally many
+// pairs one after the other, so that a loop over all of them has few surprises for
+// the processor.
 type sector struct {
 	count    int
 	energy   []float64 // of each state without its hops, Hz
-	span     []span    // where the hops of each state stand
-	order    []int32   // the states by their number of hops
-	classEnd []int32   // order[:classEnd[k]] have at most k hops
-	from     []int32   // states that the hops come from
-	element  []float64 // matrix elements, Hz
+	span     []span    // where the pairs of each state stand
+	order    []int32   // the states by their number of pairs
+	classEnd []int32   // order[:classEnd[k]] have at most k pairs
+	pairs    []hopPair
 }
 
-// span is a stretch of from and element.
+// hopPair are two hops to one state; a single one has a second element of 0.
+type hopPair struct {
+	first, second         float64 // matrix elements, Hz
+	fromFirst, fromSecond uint32  // states that the hops come from
+}
+
+// span is a stretch of pairs.
 type span struct{ begin, length int32 }
 
 // part is one half: its basis and the terms inside it, by place in its own order.
@@ -72,8 +77,6 @@ func (p *part) numberOfHops(t int) int {
 func (p *part) build(ctx context.Context, t int) (*sector, error) {
 	s := &sector{count: p.count(t)}
 	s.energy, s.span, s.order = make([]float64, s.count), make([]span, s.count), make([]int32, s.count)
-	hops := p.numberOfHops(t)
-	s.from, s.element = make([]int32, 0, hops), make([]float64, 0, hops)
 	if err := p.sort(ctx, s, t); err != nil {
 		return nil, err
 	}
@@ -84,9 +87,9 @@ func (p *part) build(ctx context.Context, t int) (*sector, error) {
 		}
 		p.state(state, t, int(i))
 		s.energy[i] = p.energyOf(state)
-		begin := len(s.from)
-		p.appendHops(s, state, int(i))
-		s.span[i] = span{int32(begin), int32(len(s.from) - begin)}
+		begin := len(s.pairs)
+		p.appendHops(s, state)
+		s.span[i] = span{int32(begin), int32(len(s.pairs) - begin)}
 	}
 	return s, nil
 }
@@ -94,25 +97,30 @@ func (p *part) build(ctx context.Context, t int) (*sector, error) {
 // stretch is the number of states handled between two looks at a context.
 const stretch = 1 << 12
 
-// sort orders the states by their number of hops, keeping the order of equals.
+// sort orders the states by their number of pairs, keeping the order of equals, and
+// makes room for the pairs.
 func (p *part) sort(ctx context.Context, s *sector, t int) error {
 	state := make([]int, p.sites)
 	p.first(state, t)
-	hops := make([]int32, s.count)
-	for i := range hops {
+	pairs, total := make([]int32, s.count), 0
+	for i := range pairs {
 		if i%stretch == 0 && ctx.Err() != nil {
 			return ctx.Err()
 		}
-		for _, h := range p.bonds {
-			hops[i] += p.way(state[h.low], state[h.high]) + p.way(state[h.high], state[h.low])
+		hops := int32(0)
+		for _, b := range p.bonds {
+			hops += p.way(state[b.low], state[b.high]) + p.way(state[b.high], state[b.low])
 		}
+		pairs[i] = (hops + 1) / 2
+		total += int(pairs[i])
 		p.next(state)
 	}
 	if s.count == 0 {
 		return nil
 	}
-	s.classEnd = make([]int32, slices.Max(hops)+1)
-	for _, k := range hops {
+	s.pairs = make([]hopPair, 0, total)
+	s.classEnd = make([]int32, slices.Max(pairs)+1)
+	for _, k := range pairs {
 		s.classEnd[k]++
 	}
 	begin := int32(0)
@@ -120,7 +128,7 @@ func (p *part) sort(ctx context.Context, s *sector, t int) error {
 		s.classEnd[k] = begin
 		begin += n
 	}
-	for i, k := range hops {
+	for i, k := range pairs {
 		s.order[s.classEnd[k]] = int32(i)
 		s.classEnd[k]++
 	}

@@ -12,12 +12,21 @@ type Workspace struct {
 	operator *Operator
 	workers  int
 	sums     [][2]float64 // X.Dst and X.X of each task
+	scratch  [][]float64  // four rows for each worker
 }
 
 // NewWorkspace returns a workspace that shares the work between so many
 // goroutines; workers < 1 stands for what the machine runs at once.
 func (h *Operator) NewWorkspace(workers int) *Workspace {
-	return &Workspace{operator: h, workers: blocks.Workers(workers)}
+	w := &Workspace{operator: h, workers: blocks.Workers(workers)}
+	most := 0
+	for i := range h.blocks {
+		most = max(most, min(4, h.blocks[i].rows)*h.blocks[i].cols)
+	}
+	for range min(w.workers, len(h.tasks)) {
+		w.scratch = append(w.scratch, make([]float64, most))
+	}
+	return w
 }
 
 // Product is a combination of products with H, for k vectors at once:
@@ -34,9 +43,9 @@ type Product struct {
 }
 
 // Combine computes a Product. Every number of workers gives the same bits, and so
-// does every way to group the vectors. Cost: about a third of a nanosecond per hop
-// and core while the vectors stay in the cache; no allocation with one worker
-// after the first call of that size.
+// does every way to group the vectors. Cost: about 0.4 ns per hop and core
+// while the blocks stay in the cache; nothing that grows is allocated after the
+// first call.
 //
 // It returns ctx.Err() if it is stopped, within milliseconds; Dst is then partly
 // done. It panics if a length is wrong or w belongs to another operator.
@@ -57,8 +66,8 @@ func (h *Operator) Combine(ctx context.Context, p Product, w *Workspace) error {
 		w.sums = make([][2]float64, need)
 	}
 	sums := w.sums[len(p.X)*first:]
-	err := blocks.Run(ctx, w.workers, len(p.X)*first, func(_, i int) {
-		w.sums[i] = h.doRows(&h.tasks[i%first], &p, i/first)
+	err := blocks.Run(ctx, w.workers, len(p.X)*first, func(worker, i int) {
+		w.sums[i] = h.doRows(&h.tasks[i%first], &p, i/first, w.scratch[worker%len(w.scratch)])
 	})
 	if err == nil && second > 0 {
 		err = blocks.Run(ctx, w.workers, len(p.X)*second, func(_, i int) {
