@@ -29,15 +29,15 @@ type Thermal struct {
 }
 
 // rungs is the number of |beta| of either sign, from 1e-3 to 1e3 over the unit of
-// energy: a factor of 1.075 apart.
-const rungs = 193
+// energy: a factor of 1.155 apart.
+const rungs = 97
 
 // Match returns the canonical ensemble of atoms on a lattice with a given energy
 // per atom [Hz], of either sign of T: what the state would relax to if it forgot
 // all but its energy.
 //
-// Between the values of beta that are computed, E and S are interpolated with their
-// slopes -Var and -beta Var, to 1e-6 or so. Cost: that of thermo.Canonical.
+// Between the values of beta that are computed, ln Z is interpolated with its first
+// two derivatives, -E and Var. Cost: that of thermo.Canonical.
 //
 // It returns an error that wraps ErrAtEnd, and the errors of thermo.Canonical.
 func Match(ctx context.Context, l *lattice.Lattice, m bosehubbard.Model, atoms int, energy float64, opt thermo.CanonicalOptions) (*Thermal, error) {
@@ -61,36 +61,57 @@ func Match(ctx context.Context, l *lattice.Lattice, m bosehubbard.Model, atoms i
 	if !(points[0].Energy > total) || at == len(points)-1 {
 		return nil, fmt.Errorf("passage: %g Hz per atom: %w", energy, ErrAtEnd)
 	}
-	low, high := points[at], points[at+1]
-	beta := crossing(low, high, total)
+	between := newQuintic(points[at], points[at+1])
+	beta := between.where(total)
 	t := &Thermal{Beta: beta, PerTunnelling: math.NaN(), Exact: averages.Exact}
-	t.EntropyPerAtom = hermite(low.Beta, high.Beta, low.Entropy, high.Entropy, -low.Beta*low.Variance, -high.Beta*high.Variance, beta) / float64(atoms)
-	t.EntropyError = max(low.EntropyError, high.EntropyError) / float64(atoms)
+	logZ, _ := between.at(beta)
+	t.EntropyPerAtom = (logZ + beta*total) / float64(atoms)
+	t.EntropyError = max(points[at].EntropyError, points[at+1].EntropyError) / float64(atoms)
 	if j := largestTunnelling(m); j > 0 {
 		t.PerTunnelling = 1 / (beta * j)
 	}
 	return t, nil
 }
 
-// crossing returns the beta between two averages at which E is total.
-func crossing(low, high thermo.Average, total float64) float64 {
-	a, b := low.Beta, high.Beta
-	for range 60 {
+// quintic is ln Z between two values of beta: the polynomial with the right value,
+// first and second derivative at both.
+type quintic struct {
+	from, length float64 // of beta
+	c            [6]float64
+}
+
+func newQuintic(low, high thermo.Average) quintic {
+	h := high.Beta - low.Beta
+	y0, d0, s0 := low.Entropy-low.Beta*low.Energy, -low.Energy*h, low.Variance*h*h
+	y1, d1, s1 := high.Entropy-high.Beta*high.Energy, -high.Energy*h, high.Variance*h*h
+	rise, slope, bend := y1-y0-d0-s0/2, d1-d0-s0, s1-s0
+	return quintic{from: low.Beta, length: h, c: [6]float64{
+		y0, d0, s0 / 2, 10*rise - 4*slope + bend/2, -15*rise + 7*slope - bend, 6*rise - 3*slope + bend/2,
+	}}
+}
+
+// at returns ln Z and its derivative, -E.
+func (q *quintic) at(beta float64) (logZ, slope float64) {
+	u := (beta - q.from) / q.length
+	for k := 5; k >= 0; k-- {
+		slope = slope*u + logZ
+		logZ = logZ*u + q.c[k]
+	}
+	return logZ, slope / q.length
+}
+
+// where returns the beta at which E is total.
+func (q *quintic) where(total float64) float64 {
+	a, b := q.from, q.from+q.length
+	for range 60 { // E falls
 		middle := (a + b) / 2
-		if hermite(low.Beta, high.Beta, low.Energy, high.Energy, -low.Variance, -high.Variance, middle) > total {
+		if _, slope := q.at(middle); -slope > total {
 			a = middle
 		} else {
 			b = middle
 		}
 	}
 	return (a + b) / 2
-}
-
-// hermite is the cubic through two points with two slopes.
-func hermite(x0, x1, y0, y1, slope0, slope1, x float64) float64 {
-	h := x1 - x0
-	u := (x - x0) / h
-	return y0*(1+2*u)*(1-u)*(1-u) + y1*u*u*(3-2*u) + h*u*(1-u)*(slope0*(1-u)-slope1*u)
 }
 
 func largestTunnelling(m bosehubbard.Model) float64 {
