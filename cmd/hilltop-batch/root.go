@@ -63,12 +63,12 @@ func (p *program) root() *cobra.Command {
 		SilenceErrors: true,
 		Args:          cobra.NoArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error {
-			return usageError{fmt.Errorf("no verb given; want one of: bands, exact, judge")}
+			return usageError{fmt.Errorf("no verb given; want one of: bands, exact, judge, simulate")}
 		},
 	}
 	root.PersistentFlags().BoolVar(&p.json, "json", false, "print one JSON object on standard output and nothing else")
 	root.SetFlagErrorFunc(func(_ *cobra.Command, err error) error { return usageError{err} })
-	root.AddCommand(p.judge(), p.bands(), p.exact())
+	root.AddCommand(p.judge(), p.bands(), p.exact(), p.simulate())
 	return root
 }
 
