@@ -22,8 +22,9 @@ type LevelJudgement struct {
 // Judge decides on the levels at a mean energy per body [Hz] for the wanted sign
 // of T, -1 or +1.
 //
-// open if the levels go on without end, astray if beta is not of that sign, leaky if the outer time is under
-// MinTimeRatio inner times, else sealed; the first that applies is the verdict.
+// open if the levels go on without end, astray if beta is not of that sign, leaky
+// if the outer time is under MinTimeRatio inner times, else sealed; the first that
+// applies is the verdict.
 //
 // It returns the errors of At, and one for a sign or a time that is none.
 func (l Levels) Judge(energy float64, sign int) (LevelJudgement, error) {
