@@ -13,7 +13,9 @@ import "math"
 //
 //	integral_s^(s+r) |u_m| <= sum_p r^(p+1)/(p+1)! (B^p |u(s)|)_m.
 //
-// Both series share their terms' size and are summed together.
+// Where a vector had to be made orthogonal again, what was removed from H v_j is a
+// defect too, |removed| u_j. So defects come as a list with a number for every u_j,
+// most of them 0, and beta_m for the last.
 
 const (
 	// stride is the length of an interval times the largest row sum of T. The bound
@@ -110,14 +112,15 @@ func (t tridiagonal) applyTo(dst, x []float64, h float64) {
 	dst[n-1] = h * (before + (t.alpha[n-1]-t.centre)*x[n-1])
 }
 
-// ahead bounds the integral of |u_m| over the next step.
-func (m *march) ahead(t tridiagonal, step float64) float64 {
+// ahead bounds the integral of sum_j defects[j] |u_j| over the next step; those
+// before first are 0.
+func (m *march) ahead(t tridiagonal, defects []float64, first int, step float64) float64 {
 	n := len(t.alpha)
 	y, next := m.above[:n], m.spare[:n]
 	for j := range y {
 		y[j] = math.Hypot(m.re[j], m.im[j])
 	}
-	sum := step * y[n-1]
+	sum := step * dot(defects[first:], y[first:])
 	for p := 1; p <= terms; p++ {
 		h := step / float64(p)
 		before := 0.0
@@ -127,27 +130,30 @@ func (m *march) ahead(t tridiagonal, step float64) float64 {
 		}
 		next[n-1] = h * before
 		y, next = next, y
-		sum += step / float64(p+1) * y[n-1]
+		sum += step / float64(p+1) * dot(defects[first:], y[first:])
 	}
 	return sum
 }
 
-// reach returns a time s <= time at which the bound of the defect's error of a
-// unit vector is at most rate s, and that bound; last is beta_m. It marches to the
-// first node that fails and then looks for a shorter last interval.
-func (m *march) reach(t tridiagonal, last, time, rate float64) (reach, bound float64) {
+// reach returns a time s <= time at which the bound of the error of a unit vector
+// from the defects is at most rate s, and that bound. It marches to the first node
+// that fails and then looks for a shorter last interval.
+func (m *march) reach(t tridiagonal, defects []float64, time, rate float64) (reach, bound float64) {
+	first := 0
+	for defects[first] == 0 && first < len(defects)-1 {
+		first++
+	}
 	m.start(len(t.alpha))
 	nodes := max(1, math.Ceil(time*t.radius/stride))
 	step := time / nodes
-	integral := 0.0
 	for k := 1.0; k <= nodes; k++ {
-		now := integral + m.ahead(t, step)
-		if !(last*now <= rate*step*k) {
+		now := bound + m.ahead(t, defects, first, step)
+		if !(now <= rate*step*k) {
 			break
 		}
-		integral, reach = now, step*k
+		bound, reach = now, step*k
 		if k == nodes {
-			return time, last * integral
+			return time, bound
 		}
 		m.advance(t, step)
 	}
@@ -157,11 +163,11 @@ func (m *march) reach(t tridiagonal, last, time, rate float64) (reach, bound flo
 	}
 	for range halvings {
 		step /= 2
-		if now := integral + m.ahead(t, step); last*now <= rate*(reach+step) {
-			return reach + step, last * now
+		if now := bound + m.ahead(t, defects, first, step); now <= rate*(reach+step) {
+			return reach + step, now
 		}
 	}
-	return reach, last * integral
+	return reach, bound
 }
 
 // rounding allows for the rounding errors of products and sums that grow with

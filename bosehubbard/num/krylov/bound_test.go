@@ -18,6 +18,13 @@ func randomTridiagonal(m int, random *rand.Rand) tridiagonal {
 	return centred(alpha, beta)
 }
 
+// lastOnly is a list of defects with beta_m alone.
+func lastOnly(m int, beta float64) []float64 {
+	defects := make([]float64, m)
+	defects[m-1] = beta
+	return defects
+}
+
 // u from the march against the dense exponential of T.
 func TestMarchAgainstDense(t *testing.T) {
 	random := rand.New(rand.NewPCG(1, 2))
@@ -51,7 +58,7 @@ func TestIntegralIsBounded(t *testing.T) {
 		tri := randomTridiagonal(m, random)
 		time := 3 * random.Float64()
 		march := newMarch(m)
-		reach, bound := march.reach(tri, 1, time, math.Inf(1))
+		reach, bound := march.reach(tri, lastOnly(m, 1), time, math.Inf(1))
 		if reach != time {
 			t.Fatalf("reach %g of %g with every error allowed", reach, time)
 		}
@@ -76,13 +83,13 @@ func TestReachIsNearlyAsFarAsItGoes(t *testing.T) {
 		tri := randomTridiagonal(m, random)
 		march := newMarch(m)
 		rate := math.Pow(10, -12+10*random.Float64())
-		reach, bound := march.reach(tri, 2, 50, rate)
+		reach, bound := march.reach(tri, lastOnly(m, 2), 50, rate)
 		if !(reach > 0) || bound > rate*reach {
 			t.Errorf("dimension %d, rate %.2g: reach %g with bound %.3g", m, rate, reach, bound)
 			continue
 		}
 		further := 1.3*reach + 0.3/tri.radius
-		if got, _ := march.reach(tri, 2, further, rate); got == further && further > 2.5*reach {
+		if got, _ := march.reach(tri, lastOnly(m, 2), further, rate); got == further && further > 2.5*reach {
 			t.Errorf("dimension %d, rate %.2g: stopped at %g, but %g holds too", m, rate, reach, further)
 		}
 	}

@@ -45,7 +45,7 @@ type Propagator struct {
 	alpha, beta []float64 // T: beta[j] couples the vectors j and j+1
 	size        float64   // |psi|
 	again       int       // the last vector to be orthogonalised in full, if any
-	removed     float64   // sum of the norms of what that took out of H v_j
+	defects     []float64 // |what that took out of H v_j|, and beta_m for the last
 	likely      int       // dimension that sufficed last time,
 	likelyTime  float64   // for this time
 
@@ -65,7 +65,7 @@ func New(n int, opt Options) *Propagator {
 	return &Propagator{
 		least: min(opt.Least, opt.Dimension), most: opt.Dimension, space: newSpace(n, opt.Dimension+1, opt.Workers),
 		march: newMarch(opt.Dimension + 1), watch: newWatch(n, opt.Dimension),
-		alpha: make([]float64, 0, opt.Dimension), beta: make([]float64, 0, opt.Dimension),
+		alpha: make([]float64, 0, opt.Dimension), beta: make([]float64, 0, opt.Dimension), defects: make([]float64, 0, opt.Dimension),
 	}
 }
 
@@ -117,7 +117,10 @@ func (p *Propagator) Build(ctx context.Context, psi Vector, tau, tolerance float
 		}
 		if reach == time || m == p.most || closed {
 			p.likely, p.likelyTime = m, time
-			return reach, bound, nil
+			if reach == 0 && time > 0 {
+				err = &ToleranceError{Tolerance: tolerance, Rounding: p.defects[0] * time}
+			}
+			return reach, bound, err
 		}
 		// A dimension more gains about one over the radius in time.
 		t, _ := p.projected()
@@ -140,18 +143,22 @@ func (p *Propagator) assess(time, tolerance float64) (reach, bound float64, err 
 	if time == 0 {
 		return 0, stepRounding, nil
 	}
-	whole := rounding(t, last, time) + p.removed*time
+	whole := rounding(t, last, time)
 	if !(whole < tolerance/2) {
 		return 0, 0, &ToleranceError{Tolerance: tolerance, Rounding: whole}
 	}
 	span := min(time, mostNodes*stride/t.radius) // radius 0: time
-	reach, bound = p.march.reach(t, last, span, (tolerance-whole)/time)
+	end := &p.defects[len(p.defects)-1]
+	removed := *end
+	*end += last
+	reach, bound = p.march.reach(t, p.defects, span, (tolerance-whole)/time)
+	*end = removed
 	return reach, bound + whole*(reach/time) + stepRounding, nil
 }
 
 // begin takes psi as the first vector.
 func (p *Propagator) begin(ctx context.Context, psi Vector) error {
-	p.alpha, p.beta, p.again, p.removed = p.alpha[:0], p.beta[:0], -1, 0
+	p.alpha, p.beta, p.defects, p.again = p.alpha[:0], p.beta[:0], p.defects[:0], -1
 	size, err := p.space.norm(ctx, psi)
 	if err != nil {
 		return err
@@ -186,7 +193,7 @@ func (p *Propagator) grow(ctx context.Context, rate float64, h Product) (closed 
 	if sum := math.Abs(alpha) + beta; math.IsNaN(sum) || math.IsInf(sum, 0) {
 		return false, ErrNotFinite
 	}
-	p.alpha, p.beta = append(p.alpha, alpha), append(p.beta, beta)
+	p.alpha, p.beta, p.defects = append(p.alpha, alpha), append(p.beta, beta), append(p.defects, 0)
 	if !p.closes(j) && p.mustClean(j, rate) {
 		for before, again := beta, true; again; before = p.beta[j] {
 			norm, removed, err := s.remove(ctx, j)
@@ -194,7 +201,7 @@ func (p *Propagator) grow(ctx context.Context, rate float64, h Product) (closed 
 				return false, err
 			}
 			p.beta[j] = norm
-			p.removed += removed
+			p.defects[j] += removed
 			again = norm < 0.7*before && !p.closes(j) // what was left was rounding
 		}
 		p.removals++
@@ -213,8 +220,8 @@ func (p *Propagator) closes(j int) bool {
 
 // mustClean reports whether vector j+1 has to be made orthogonal to all before it:
 // it and the one after it, once the watch says that it matters. What is removed
-// from H v_j is missing from T and adds |removed| times the time to the error, so
-// it has to be done while that is little.
+// from H v_j is missing from T and counts as a defect, so it has to be done while
+// that is little.
 func (p *Propagator) mustClean(j int, rate float64) bool {
 	t, last := p.projected()
 	limit := min(math.Sqrt(unitRoundoff), max(4*p.watch.floor, 0.01*rate/(t.radius+last)))
