@@ -3,7 +3,6 @@ package gui
 import (
 	"slices"
 
-	"hilltop/bosehubbard/report"
 	"hilltop/gui/session"
 )
 
@@ -169,8 +168,8 @@ func (p *CeilingPage) showCriteria(s session.State) {
 }
 
 // ordered puts the broken criteria first, then the one that breaks first.
-func ordered(list []report.Criterion, first string) []report.Criterion {
-	place := func(c report.Criterion) int {
+func ordered(list []session.Criterion, first string) []session.Criterion {
+	place := func(c session.Criterion) int {
 		switch {
 		case !c.Passed:
 			return 0
@@ -180,7 +179,7 @@ func ordered(list []report.Criterion, first string) []report.Criterion {
 		return 2
 	}
 	sorted := slices.Clone(list)
-	slices.SortStableFunc(sorted, func(a, b report.Criterion) int { return place(a) - place(b) })
+	slices.SortStableFunc(sorted, func(a, b session.Criterion) int { return place(a) - place(b) })
 	return sorted
 }
 

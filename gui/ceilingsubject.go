@@ -5,12 +5,12 @@ import (
 	"slices"
 
 	"hilltop/bosehubbard/figure"
-	"hilltop/bosehubbard/report"
+	"hilltop/gui/session"
 )
 
 // ceilingSubject is the Ceiling picture, read term by term.
 type ceilingSubject struct {
-	report *report.Report
+	report *session.Report
 	axes   []string // of the lattice
 }
 
@@ -30,7 +30,7 @@ func (c *ceilingSubject) scales() []string {
 }
 
 // finite is the size of a bound, 0 where there is none.
-func finite(b report.Bound) float64 {
+func finite(b session.Bound) float64 {
 	if !b.Known || b.Unbounded() {
 		return 0
 	}
