@@ -20,6 +20,11 @@ func newMatrix(h *fock.Operator, workers int) *matrix {
 	}
 }
 
+// Project takes away what is not in the sector.
+func (m *matrix) Project(ctx context.Context, x []float64) error {
+	return m.ProjectContext(ctx, x, m.workspace)
+}
+
 // Combine sets dst = a H x + c dst and returns x.dst.
 func (m *matrix) Combine(ctx context.Context, dst, x []float64, a, c float64) (float64, error) {
 	m.product.Dst[0], m.product.X[0] = dst, x

@@ -98,7 +98,7 @@ func (o Options) fitBloch(t *Terms, atoms int, g *group) error {
 		perHop, perVector = 20, 16
 	}
 	wanted := min(states*(28+perVector*float64(o.Vectors))+hops*perHop+tableBytes(t.Sites, atoms), maxBytes)
-	if wanted > float64(o.MemoryBytes) {
+	if wanted > float64(o.MemoryBytes) || states > math.MaxInt32 {
 		return tooLarge(t.Sites, atoms, wanted, o)
 	}
 	return nil
@@ -184,7 +184,7 @@ func (b *Bloch) Len() int {
 func (b *Bloch) Dimension() int { return b.dimension }
 
 // Project does nothing: every vector belongs to the sector.
-func (b *Bloch) Project([]float64) {}
+func (b *Bloch) Project(context.Context, []float64) error { return nil }
 
 // Combine sets dst = a H x + c dst and returns x.dst; with c = 0 what stands in
 // dst does not matter. Every number of workers gives the same bits.

@@ -1,6 +1,7 @@
 package fock
 
 import (
+	"context"
 	"fmt"
 	"math"
 )
@@ -42,10 +43,13 @@ type linker struct {
 	cut, leftCentre, rightCentre []bond
 }
 
-// connect finds all links of all blocks.
-func (y *layout) connect(t *Terms) {
+// connect finds all links of all blocks, looking at ctx between blocks.
+func (y *layout) connect(ctx context.Context, t *Terms) error {
 	k := y.newLinker(t)
 	for target := range y.blocks {
+		if err := ctx.Err(); err != nil {
+			return err
+		}
 		for _, b := range k.cut {
 			k.across(target, b)
 		}
@@ -56,6 +60,7 @@ func (y *layout) connect(t *Terms) {
 			k.toRight(target, b)
 		}
 	}
+	return nil
 }
 
 // newLinker sorts the hops across the cut; bond.low is the place on the left, or

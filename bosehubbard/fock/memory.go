@@ -150,7 +150,7 @@ func (o Options) fitTables(sites, atoms int) error {
 // do not fit the memory.
 func (h *Operator) fit(opt Options) error {
 	bytes := 8*float64(h.length)*float64(opt.Vectors) + h.listBytes() + tableBytes(h.terms.Sites, h.atoms)
-	if bytes > float64(opt.MemoryBytes) || h.length > math.MaxInt/16 {
+	if bytes > float64(opt.MemoryBytes) || h.length > math.MaxInt/16 || h.listTooLong() {
 		e := tooLarge(h.terms.Sites, h.atoms, bytes, opt)
 		if h.most < h.atoms {
 			e.Dimension = strconv.Itoa(h.dimension)
@@ -158,6 +158,17 @@ func (h *Operator) fit(opt Options) error {
 		return e
 	}
 	return nil
+}
+
+// listTooLong says whether a list of one half is longer than its numbers of 32 bits.
+func (h *Operator) listTooLong() bool {
+	for i := range h.blocks {
+		b := &h.blocks[i]
+		if max(b.rows+h.left.numberOfHops(b.left), b.cols+h.right.numberOfHops(b.right)) > math.MaxInt32 {
+			return true
+		}
+	}
+	return false
 }
 
 // listBytes counts what the operator will hold of the halves.

@@ -97,7 +97,9 @@ func newOperator(ctx context.Context, t *Terms, s *split, atoms int, opt Options
 			return nil, err
 		}
 	}
-	h.connect(t)
+	if err := h.connect(ctx, t); err != nil {
+		return nil, err
+	}
 	h.divide()
 	return h, nil
 }

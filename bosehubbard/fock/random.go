@@ -1,7 +1,10 @@
 package fock
 
 import (
+	"context"
 	"math/rand/v2"
+
+	"hilltop/bosehubbard/num/blocks"
 )
 
 // randomLength is the length of a stretch of a random vector with a generator of
@@ -27,18 +30,25 @@ func (h *Operator) RandomTo(dst []float64, seed, stream uint64) {
 // Project takes away from a vector of length Len what is not in the sector. It
 // changes nothing in the whole space.
 func (h *Operator) Project(x []float64) {
-	for i := range h.blocks {
-		b := &h.blocks[i]
-		if !h.square(b) {
-			continue
-		}
+	_ = h.ProjectContext(context.Background(), x, h.NewWorkspace(1))
+}
+
+// ProjectContext is Project on the goroutines of a workspace, until ctx is done.
+//
+// It returns ctx.Err() if stopped.
+func (h *Operator) ProjectContext(ctx context.Context, x []float64, w *Workspace) error {
+	return blocks.Run(ctx, w.workers, len(h.bands), func(_, i int) {
+		t := &h.bands[i]
+		b := &h.blocks[t.block]
 		p, n := float64(h.parity), b.cols
 		m := x[b.offset : b.offset+n*n]
-		for row := range n {
-			for col := row; col < n; col++ {
-				mean := (m[row*n+col] + p*m[col*n+row]) / 2
-				m[row*n+col], m[col*n+row] = mean, p*mean
+		for begin := t.from; begin < n; begin += tile {
+			for row := t.from; row < t.to; row++ {
+				for col := max(begin, row); col < min(begin+tile, n); col++ {
+					mean := (m[row*n+col] + p*m[col*n+row]) / 2
+					m[row*n+col], m[col*n+row] = mean, p*mean
+				}
 			}
 		}
-	}
+	})
 }

@@ -207,6 +207,10 @@ func TestExactStates(t *testing.T) {
 	if floor := ring["floor"].(float64); math.Abs(floor-1) > 1e-12 || ring["sector"] != "quasi-momentum [2]" || ring["dimension"] != 1.0 {
 		t.Errorf("one atom of quasi-momentum 2 pi/3: %v, want 1 J = -2 J cos(2 pi/3)", ring)
 	}
+	odd := object(t, 0, "exact", "--sites", "2", "--atoms", "2", "--interaction", "4", "--sector", "odd")
+	if odd["floor"] != 4.0 || odd["dimension"] != 1.0 { // (|20> - |02>)/sqrt 2 at U, from the 3 x 3 matrix
+		t.Errorf("the odd state of two atoms on two sites: %v, want U = 4", odd)
+	}
 	apart := object(t, 0, "exact", "--sites", "3", "--atoms", "2", "--tunnelling", "0")
 	if note := apart["cautions"].([]any)[0].(map[string]any); note["code"] != "disconnected" {
 		t.Errorf("sites apart: %v, want the caution disconnected", note)
@@ -278,6 +282,7 @@ func TestFailures(t *testing.T) {
 		{"sites and grid", usage, "sites", 2, []string{"exact", "--grid", "3x3", "--sites", "3", "--atoms", "1"}},
 		{"unknown lattice", usage, "hexagon", 2, []string{"exact", "--lattice", "hexagon", "--grid", "3x3", "--atoms", "1"}},
 		{"a kagome of one number", usage, "kagome", 2, []string{"exact", "--lattice", "kagome", "--sites", "3", "--atoms", "1"}},
+		{"unknown sector", usage, "sector", 2, []string{"exact", "--sites", "3", "--atoms", "1", "--sector", "left"}},
 		{"negative limit", usage, "max-occupation", 2, []string{"exact", "--sites", "3", "--atoms", "1", "--max-occupation", "-1"}},
 		{"limit too low", usage, "no room", 2, []string{"exact", "--sites", "3", "--atoms", "4", "--max-occupation", "1"}},
 		{"NaN", usage, "interaction", 2, []string{"exact", "--sites", "3", "--atoms", "1", "--interaction", "NaN"}},

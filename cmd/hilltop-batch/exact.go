@@ -76,7 +76,8 @@ func (p *program) runExact(cmd *cobra.Command, f exactFlags) error {
 	}
 	bar := newBar(p.stderr)
 	ends, err := exact.SolveTerms(cmd.Context(), s.terms, f.atoms, exact.Options{
-		MaxOccupation: f.most, EndStates: f.states, Momentum: f.momentum, Workers: f.workers, Progress: bar.show,
+		MaxOccupation: f.most, EndStates: f.states, Sector: sectors[f.sector], Momentum: f.momentum,
+		Workers: f.workers, Progress: bar.show,
 	})
 	bar.clear()
 	if err != nil {

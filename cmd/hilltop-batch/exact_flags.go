@@ -9,6 +9,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"hilltop/bosehubbard"
+	"hilltop/bosehubbard/exact"
 	"hilltop/bosehubbard/fock"
 	"hilltop/bosehubbard/lattice"
 )
@@ -22,6 +23,7 @@ type exactFlags struct {
 	second                             float64
 	most, workers                      int
 	momentum                           []int
+	sector                             string
 	entropy, volume                    bool
 	beta                               []float64
 }
@@ -39,6 +41,7 @@ func (f *exactFlags) register(cmd *cobra.Command) {
 	flags.Float64Var(&f.curvature, "curvature", 0, "V per site squared, negative pushes outwards")
 	flags.IntVar(&f.most, "max-occupation", 0, "most atoms on a site, 0 for no limit; its error is bounded")
 	flags.BoolVar(&f.states, "states", false, "describe the states at both ends; twice the time")
+	flags.StringVar(&f.sector, "sector", "auto", "part of the spectrum: auto, whole (all of it without use of a mirror), even, odd")
 	flags.IntSliceVar(&f.momentum, "momentum", nil, "only the states of quasi-momentum 2 pi m/L, one m for each closed axis: 1 or 0,2")
 	flags.IntVar(&f.workers, "workers", 0, "processors to use, 0 for all; the answer is the same")
 	flags.BoolVar(&f.entropy, "entropy", false, "density of states: S(E) and beta(E) = dS/dE")
@@ -63,6 +66,9 @@ type exactSystem struct {
 	model   bosehubbard.Model // without the second neighbours
 	terms   *fock.Terms
 }
+
+// sectors are the words of --sector.
+var sectors = map[string]exact.Sector{"auto": exact.SectorAuto, "whole": exact.SectorWhole, "even": exact.SectorEven, "odd": exact.SectorOdd}
 
 // system builds the graph and the model, or says which flag is wrong.
 func (f exactFlags) system() (exactSystem, error) {
@@ -105,8 +111,8 @@ func (f exactFlags) checkThermo() error {
 	if !f.entropy && f.volume {
 		return fmt.Errorf("--volume-entropy: want it together with --entropy")
 	}
-	if (f.entropy || f.beta != nil) && (f.second != 0 || f.momentum != nil) {
-		return fmt.Errorf("--entropy and --beta: want them without --second-tunnelling and --momentum")
+	if (f.entropy || f.beta != nil) && (f.second != 0 || f.momentum != nil || f.sector == "even" || f.sector == "odd") {
+		return fmt.Errorf("--entropy and --beta: want them without --second-tunnelling, --momentum and one --sector")
 	}
 	return nil
 }
@@ -120,6 +126,9 @@ func (f exactFlags) check() error {
 		if math.IsNaN(flag.value) || math.IsInf(flag.value, 0) {
 			return fmt.Errorf("--%s %g: want a finite number", flag.name, flag.value)
 		}
+	}
+	if _, ok := sectors[f.sector]; !ok {
+		return fmt.Errorf("--sector %q: want auto, whole, even or odd", f.sector)
 	}
 	for _, flag := range []struct {
 		name  string

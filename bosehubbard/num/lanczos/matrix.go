@@ -17,7 +17,7 @@ type Matrix interface {
 
 	// Project takes away from x what is not in the space that A acts on, where that
 	// is a subspace of all vectors.
-	Project(x []float64)
+	Project(ctx context.Context, x []float64) error
 }
 
 // product makes a Matrix of a function that sets dst = A x.
@@ -28,7 +28,7 @@ type product struct {
 
 func (p *product) Len() int { return len(p.scratch) }
 
-func (p *product) Project([]float64) {}
+func (p *product) Project(context.Context, []float64) error { return nil }
 
 func (p *product) Combine(ctx context.Context, dst, x []float64, a, c float64) (float64, error) {
 	if err := ctx.Err(); err != nil {

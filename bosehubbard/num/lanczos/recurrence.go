@@ -61,11 +61,12 @@ func (r *recurrence) random(seed, stream uint64) error {
 // from the given offset, as far as it lies in the matrix's space.
 func (r *recurrence) start(fill func(dst []float64, offset int)) error {
 	r.alpha, r.beta, r.normBefore = r.alpha[:0], r.beta[:0], 0
-	err := r.blocks(func(lo, hi int) { fill(r.u[lo:hi], lo) })
-	if err != nil {
+	if err := r.blocks(func(lo, hi int) { fill(r.u[lo:hi], lo) }); err != nil {
 		return err
 	}
-	r.matrix.Project(r.u)
+	if err := r.matrix.Project(r.ctx, r.u); err != nil {
+		return err
+	}
 	square, err := r.sum(func(lo, hi int) float64 { return floats.Dot(r.u[lo:hi], r.u[lo:hi]) })
 	r.norm = math.Sqrt(square)
 	return err
