@@ -30,6 +30,11 @@ type job struct {
 func (s *Session) Start(key string, work Work) {
 	s.mu.Lock()
 	defer s.mu.Unlock()
+	s.start(key, work)
+}
+
+// start is Start for a caller that holds mu.
+func (s *Session) start(key string, work Work) {
 	if s.doc == nil || s.ctx.Err() != nil {
 		return
 	}

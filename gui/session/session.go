@@ -58,6 +58,7 @@ type Session struct {
 	view   viewState
 	keep   keepState
 	jobs   map[string]*job
+	small  smallState
 	recent []string
 }
 
@@ -138,6 +139,7 @@ func (s *Session) forget() {
 	s.focus = ""
 	s.entries = entryCache{}
 	s.work.forget()
+	s.small.forget()
 }
 
 func wake(channel chan struct{}) {

@@ -48,6 +48,7 @@ type State struct {
 	Recent     []string   // paths, the last opened first
 	Notice     string     // one sentence for the status line
 	Jobs       map[string]Job
+	Entropy    EntropyState
 }
 
 // Field returns the field with the ID, of the knobs or of any group.

@@ -40,6 +40,7 @@ func (s *Session) state() State {
 		st.Verdict = s.verdict()
 		st.Keys = pageKeys(w.report, s.reported())
 	}
+	st.Entropy = s.entropy(st.Jobs[EntropyJob])
 	st.Unapplied = s.unapplied()
 	st.Preview, st.Track = w.preview.shown, w.track.track
 	return st
