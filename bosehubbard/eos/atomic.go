@@ -60,8 +60,10 @@ func (m *Atomic) Valid(mu, beta float64) error {
 //	K = sum_(m,n) (m+1) n (p_m p_n - p_(m+1) p_(n-1)) / U(m-n+1)
 //
 // the sum over J running over the bonds of a site. All averages of one site include
-// the second order. Doubt is (zJ X)^2, X the response <b>/field of a site without
-// tunnelling, which is 1/zJ at the boundary of the superfluid in mean field.
+// the second order. Doubt is the largest of (zJ X)^4, X the response <b>/field of a site
+// without tunnelling, which is 1/zJ at the boundary of the superfluid in mean field, and
+// the squares of the changes by the second order of n, relative to n, and of S, relative
+// to S + n/10.
 // Cost O(levels^2), 512 levels at most; no allocation.
 //
 // It returns an *InputError, or an *InvalidError with U of the wrong sign, where the
@@ -77,29 +79,48 @@ func (m *Atomic) At(mu, beta float64) (Point, error) {
 	if reason := m.occupy(f); reason != "" {
 		return Point{}, &InvalidError{m.Name(), mu, beta, reason}
 	}
-	doubt := m.zJ * m.response()
-	doubt *= doubt
-	if !(doubt <= maxDoubt) {
-		return Point{}, &InvalidError{m.Name(), mu, beta,
-			fmt.Sprintf("(zJ X)^2 = %g on the way to the superfluid, want at most %g", doubt, maxDoubt)}
-	}
 	k := m.secondOrder()
-	out := Point{Doubt: doubt, HasShares: true, Kinetic: -2 * m.squares * k}
-	entropy, moved := 0.0, k
+	out := Point{HasShares: true, Kinetic: -2 * m.squares * k}
+	entropy, filling, moved := 0.0, 0.0, k
 	for n, p := range m.p[:m.levels] {
 		if p > 0 {
 			entropy -= p * math.Log(p)
 		}
+		filling += p * float64(n)
 		moved += 2 * m.h[n] * m.d[n]
 	}
 	if !m.still {
-		out.Entropy = entropy - m.beta*m.squares*moved
+		out.Entropy = settle(entropy - m.beta*m.squares*moved)
 	}
 	if reason := m.distribute(&out); reason != "" {
 		return Point{}, &InvalidError{m.Name(), mu, beta, reason}
 	}
+	out.Doubt = max(math.Pow(m.zJ*m.response(), 4), change(filling, out.Filling, 0), change(entropy, out.Entropy, 0.1*out.Filling))
+	if !(out.Doubt <= maxDoubt) || out.Entropy < 0 {
+		return Point{}, &InvalidError{m.Name(), mu, beta, fmt.Sprintf(
+			"zJ X = %g, and the second order changes n = %g to %g and S = %g to %g: not small enough",
+			m.zJ*m.response(), filling, out.Filling, entropy, out.Entropy)}
+	}
 	f.finish(&out)
 	return out, nil
+}
+
+// settle turns an entropy that rounding made negative to 0.
+func settle(entropy float64) float64 {
+	if entropy < 0 && entropy > -1e-12 {
+		return 0
+	}
+	return entropy
+}
+
+// change is the square of the change of a quantity relative to it and a floor, 0 for
+// nothing at all.
+func change(from, to, floor float64) float64 {
+	if from == to || math.Abs(from)+math.Abs(to) < 1e-290 {
+		return 0
+	}
+	relative := (to - from) / (to + floor)
+	return relative * relative
 }
 
 // occupy sets the levels and their weights without tunnelling, and says what prevents

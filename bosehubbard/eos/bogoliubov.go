@@ -37,8 +37,8 @@ func (m *Bogoliubov) Valid(mu, beta float64) error {
 //	Omega = -m^2/2U + mean over q of [(w - e - m)/2 + T ln(1 - exp(-w/T))]
 //
 // Two lower dimensions have no condensate at T != 0, yet the sums are finite there, as
-// for a quasi-condensate. Doubt is the larger of the loop over the mean field in n, and
-// of U/zJ over 2. About 1e-6. Cost as Ideal; no allocation.
+// for a quasi-condensate. Doubt is the larger of the loop over the mean field in n, both
+// its parts taken positive, and of U/zJ over 2. About 1e-6. Cost as Ideal; no allocation.
 //
 // It returns an *InputError, or an *InvalidError with U of the wrong sign, mu on the
 // empty side of the band and where the Doubt is too large.
@@ -58,11 +58,11 @@ func (m *Bogoliubov) At(mu, beta float64) (Point, error) {
 	s := z.sound(above, f.beta)
 	mean := above / u
 	out := Point{Filling: mean - s.depletion, Entropy: s.entropy}
-	out.Doubt = max(math.Abs(s.depletion)/mean, u/(-2*z.band.bottom))
+	out.Doubt = max(s.outside/mean, u/(-2*z.band.bottom))
 	if !(out.Doubt <= maxDoubt) {
 		return Point{}, &InvalidError{m.Name(), mu, beta, fmt.Sprintf(
-			"the sound waves change the filling of the mean field, %g, by %g at U/zJ = %g, want at most half of it and U/zJ up to 1",
-			mean, -s.depletion, -u/z.band.bottom)}
+			"%g atoms per site are in sound waves on a mean field of %g at U/zJ = %g, want at most half of it and U/zJ up to 1",
+			s.outside, mean, -u/z.band.bottom)}
 	}
 	out.Interaction = above * above / (2 * u) // U dOmega/dU
 	// Omega + T S = loop energy - m^2/2U, and E = that + mu n.
@@ -75,6 +75,7 @@ func (m *Bogoliubov) At(mu, beta float64) (Point, error) {
 // loop holds what the sound waves add.
 type loop struct {
 	depletion float64 // what they take from m/U
+	outside   float64 // the same, with the zero-point part counted as positive
 	energy    float64 // zero-point and thermal, Hz
 	entropy   float64
 }
@@ -94,11 +95,13 @@ func (z *zone) sound(above, beta float64) loop {
 		// (w - e - m)/2 without cancellation: -m^2/(2 (w + e + m)).
 		l.energy -= p * above * above / (2 * (w + e + above))
 		l.depletion += p * (ratio - 1) / 2
+		l.outside += p * (1 - ratio) / 2
 		if x := beta * w; x < 700 && x > 0 {
 			b := 1 / math.Expm1(x)
 			l.energy += p * w * b
 			l.entropy += p * (x*b + math.Log1p(b))
 			l.depletion += p * ratio * b
+			l.outside += p * ratio * b
 		}
 	}
 	return l

@@ -50,7 +50,8 @@ type Chooser struct {
 const aloneAt = 2
 
 // NewChooser returns a chooser over the models that suit a lattice: Ideal alone
-// for U = 0, without tunnelling Atomic alone, else all that the package has.
+// for U = 0, without tunnelling Atomic alone, else all that the package has but
+// LinkedCluster.
 //
 // It returns the errors of the models.
 func NewChooser(t Terms) (*Chooser, error) {
@@ -101,7 +102,7 @@ func (c *Chooser) addBands(t Terms) error {
 	return nil
 }
 
-// Add adds a model of the same lattice.
+// Add adds a model of the same lattice, LinkedCluster for one.
 func (c *Chooser) Add(m Model) { c.models = append(c.models, m) }
 
 // Models lists the models asked. The caller does not change the list.

@@ -18,13 +18,15 @@
 // Models and where they hold. Doubt, the rough size of what a model leaves out, is at
 // most 1/2; beyond, a model refuses with the reason.
 //
-//	Ideal        no interaction; exact for U = 0
-//	HartreeFock  normal gas with the mean-field shift 2 U n
-//	Bogoliubov   superfluid, one loop about the mean field
-//	Atomic       sites without tunnelling, and its second order
-//	Gutzwiller   one site in the field of its neighbours
+//	Ideal          no interaction; exact for U = 0
+//	HartreeFock    normal gas with the mean-field shift 2 U n
+//	Bogoliubov     superfluid, one loop about the mean field
+//	Atomic         sites without tunnelling, and its second order
+//	Gutzwiller     one site in the field of its neighbours
+//	LinkedCluster  exact clusters of up to four sites, added up
 //
-// Chooser asks all and gives their spread. Every model is derived from one grand
+// Chooser asks all and gives their spread; the linked clusters, which take a second to
+// diagonalise, have to be added to it. Every model is derived from one grand
 // potential, so that dn/dT at fixed mu is ds/dmu at fixed T in each of them.
 //
 // Models own their scratch: one per goroutine.

@@ -55,9 +55,10 @@ func (m *Gutzwiller) Valid(mu, beta float64) error {
 //
 //	h = U n(n-1)/2 - mu n - zJ phi (b + b^+) + zJ phi^2
 //
-// most stable. Its normal phase is Atomic without the second order. Doubt is half of
-// zJ times the response of the normal phase, so that 1/2 is the boundary, and 1/2
-// everywhere in the superfluid, whose entropy is too small: it misses the sound waves.
+// most stable. Its normal phase is Atomic without the second order. Doubt is the larger
+// of sum J^2/T^2 over the bonds of a site, at most 1/2, and half of zJ times the response
+// of the normal phase, so that 1/2 is the boundary. It is 1/2 everywhere in the
+// superfluid, whose entropy is too small: it misses the sound waves.
 // Cost: some ten diagonalisations.
 //
 // It returns an *InputError, or an *InvalidError with U of the wrong sign, in a
@@ -93,7 +94,10 @@ func (m *Gutzwiller) At(mu, beta float64) (Point, error) {
 			return Point{}, &InvalidError{m.Name(), mu, beta, err.Error()}
 		}
 		if critical > 0 {
-			out.Doubt = min(maxDoubt, maxDoubt*site.Coupling/critical)
+			out.Doubt = min(maxDoubt, max(maxDoubt*site.Coupling/critical, m.terms.squares()*f.beta*f.beta))
+		}
+		if site.Coupling == 0 {
+			out.Doubt = 0 // exact
 		}
 	}
 	f.finish(&out)

@@ -34,7 +34,7 @@ func (m *HartreeFock) Valid(mu, beta float64) error {
 // the best Gaussian state without a condensate, so that its grand potential bounds the
 // true one. Doubt is the larger of
 //
-//	|U| n/(|T| + zJ/2), the collisions left out, and
+//	2 |U/T| n x/(1 + x) with x = |U|/(|T| + zJ/2), two atoms avoiding each other, and
 //	|U| n/(16 |bottom - mu + 2 U n|), the nearness of the superfluid
 //
 // Cost: some ten points of Ideal; no allocation.
@@ -42,8 +42,8 @@ func (m *HartreeFock) Valid(mu, beta float64) error {
 // It returns an *InputError, or an *InvalidError with U of the wrong sign, where the
 // Doubt is too large, and where three axes have no normal gas.
 //
-// Source: the variational principle of Gibbs and Bogoliubov; the Doubt is a rough
-// guess, checked against small clusters.
+// Source: the variational principle of Gibbs and Bogoliubov; the Doubt is a
+// guess that agrees with small clusters.
 func (m *HartreeFock) At(mu, beta float64) (Point, error) {
 	u := math.Abs(m.terms.Interaction)
 	f, err := newFrame(m.Name(), mu, beta, m.terms.Interaction)
@@ -61,13 +61,16 @@ func (m *HartreeFock) At(mu, beta float64) (Point, error) {
 	out.Kinetic *= f.mirror // finish turns it again
 	out.Interaction *= f.mirror
 	f.finish(&out)
+	x := u / (1/f.beta - z.band.bottom/2)
+	avoiding, near := 0.0, 0.0
 	if g.filling > 0 {
-		out.Doubt = u * g.filling * max(1/(1/f.beta-z.band.bottom/2), 1/(16*excess))
+		avoiding, near = 2*u*f.beta*g.filling*x/(1+x), u*g.filling/(16*excess)
 	}
+	out.Doubt = max(avoiding, near)
 	if !(out.Doubt <= maxDoubt) {
 		return Point{}, &InvalidError{m.Name(), mu, beta, fmt.Sprintf(
-			"|U| n = %g Hz against |T| + zJ/2 = %g Hz and 16 times the %g Hz to the superfluid, want half of them at most",
-			u*g.filling, 1/f.beta-z.band.bottom/2, 16*excess)}
+			"collisions change n = %g by %g of itself, and |U| n is %g of 16 times the %g Hz to the superfluid, want at most half",
+			g.filling, avoiding, near, excess)}
 	}
 	return out, nil
 }
