@@ -115,7 +115,7 @@ func (p *BenchPage) title(s session.State) string {
 	if s.Report == nil || row.Trap == "" {
 		return "No beams."
 	}
-	return whenOf(s) + " the trap along x, y, z is " + row.Trap + "; below 0 it pushes outwards."
+	return whenOf(s) + " the trap is " + row.Trap + " along x, y, z."
 }
 
 var gravityColumns = []GridColumn{{"Gravity", true}, {"", false}, {"", true}}

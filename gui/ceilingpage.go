@@ -3,6 +3,8 @@ package gui
 import (
 	"slices"
 
+	"fyne.io/fyne/v2"
+
 	"hilltop/gui/session"
 )
 
@@ -114,7 +116,6 @@ func (p *CeilingPage) Show(s session.State) {
 	p.showCriteria(s)
 	p.showTerms(s)
 	p.showStages(s)
-	p.criteria.Refresh()
 	p.fit()
 }
 
@@ -150,7 +151,7 @@ func (p *CeilingPage) showCriteria(s session.State) {
 		p.rows = append(p.rows, row)
 	}
 	first, words := p.room.first(s)
-	p.criteria.Objects = p.criteria.Objects[:0]
+	var objects []fyne.CanvasObject
 	for i, c := range ordered(list, first) {
 		shown := criterion{name: c.Name, detail: minusSigns(c.Detail), margin: quantity(c.Margin, c.Unit), verdict: sealed, floor: isFloor(s), stale: s.Fading}
 		if !c.Passed {
@@ -163,7 +164,11 @@ func (p *CeilingPage) showCriteria(s session.State) {
 			shown.first = words
 		}
 		p.rows[i].set(shown)
-		p.criteria.Objects = append(p.criteria.Objects, p.rows[i])
+		objects = append(objects, p.rows[i])
+	}
+	if !slices.Equal(objects, p.criteria.Objects) {
+		p.criteria.Objects = objects
+		p.criteria.Refresh()
 	}
 }
 

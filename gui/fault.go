@@ -50,7 +50,7 @@ func (f *Fault) least() fyne.Size {
 func (f *Fault) paint(size fyne.Size) []fyne.CanvasObject {
 	height := f.prose.lineHeight()
 	tag := filled(fyne.NewPos(0, 1), fyne.NewSize(px(f.prose.TextSize), height-2), ColorInk)
-	mark := NewProse("!", f.prose.TextSize, 1).bold()
+	mark := NewProse("!", f.prose.TextSize, 1).bold().once()
 	mark.Color = ColorPaper
 	mark.Resize(mark.MinSize())
 	mark.Move(fyne.NewPos((tag.Size().Width-mark.Width())/2, 0))

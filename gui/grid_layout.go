@@ -31,12 +31,12 @@ func inset(p *Prose, cell box) gridText {
 
 // title is a heading as it is drawn.
 func (g *Grid) title(column int) *Prose {
-	return g.aligned(NewProse(g.Columns[column].Title, textAxis, 0).soft(), column)
+	return g.aligned(NewProse(g.Columns[column].Title, textAxis, 0).soft().once(), column)
 }
 
 // text is a cell as it is drawn.
 func (g *Grid) text(row, column int) *Prose {
-	p := NewProse(g.Rows[row].Cells[column], textBody, 0)
+	p := NewProse(g.Rows[row].Cells[column], textBody, 0).once()
 	p.Bold = column == 0 && g.Rows[row].Chosen
 	if g.faded {
 		p.Color = ColorSoftInk

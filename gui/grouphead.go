@@ -134,7 +134,7 @@ func (h *GroupHead) paint(size fyne.Size) []fyne.CanvasObject {
 		filled(fyne.Position{}, size, ground),
 		filled(fyne.Position{}, fyne.NewSize(size.Width, lineThin), ColorEdge),
 	}
-	sign := NewProse("+", textBody, 1)
+	sign := NewProse("+", textBody, 1).once()
 	if h.open {
 		sign.Text = "−"
 	}

@@ -171,9 +171,9 @@ func (s *KnobSlider) paint(fyne.Size) []fyne.CanvasObject {
 		}
 	}
 	parts = append(parts, framed(fyne.NewPos(s.x(s.value)-px(handleWide)/2, 0), fyne.NewSize(px(handleWide), px(handleHigh)), ColorInk, lineThin, ColorPaper)...)
-	low := NewProse(s.lowText, textAxis, 1).soft()
+	low := NewProse(s.lowText, textAxis, 1).soft().once()
 	low.Resize(low.MinSize())
-	top := NewProse(s.topText, textAxis, 1).soft()
+	top := NewProse(s.topText, textAxis, 1).soft().once()
 	top.Resize(top.MinSize())
 	low.Move(fyne.NewPos(left, px(handleHigh)))
 	top.Move(fyne.NewPos(right-top.Width(), px(handleHigh)))

@@ -98,8 +98,8 @@ func (s *PageSwitch) paint(size fyne.Size) []fyne.CanvasObject {
 
 func (s *PageSwitch) paintCell(i int, at fyne.Position, size fyne.Size) []fyne.CanvasObject {
 	var parts []fyne.CanvasObject
-	name := NewProse(s.Cells[i].Name, textBody, 1)
-	number := NewProse(s.Cells[i].Number, textAxis, 1).soft()
+	name := NewProse(s.Cells[i].Name, textBody, 1).once()
+	number := NewProse(s.Cells[i].Number, textAxis, 1).soft().once()
 	if i == s.Chosen {
 		name.Bold = true
 		parts = append(parts,

@@ -235,6 +235,7 @@ func TestPlotTellsThatItIsOfBefore(t *testing.T) {
 	if b.window.pictureName(p, chartOf(t, p)) != "skerry-demo-bands-stale" {
 		t.Errorf("it is saved as %q", b.window.pictureName(p, chartOf(t, p)))
 	}
+	b.keep("of-before")
 	b.checkLayout("of before")
 }
 
@@ -255,6 +256,7 @@ func TestPlotKeepsTheLastGoodPicture(t *testing.T) {
 			t.Errorf("%s: fault %q, want %q and the last good picture", tc.key, p.fault, tc.want)
 		}
 	}
+	b.keep("with-a-fault")
 	b.checkLayout("with a fault")
 	b.window.Echo()
 	b.settle()

@@ -98,12 +98,15 @@ func (p *plotPage) roomInSight() float32 { return p.scroller.Size().Height }
 
 // say puts a sentence on top, soft where it is of before.
 func (p *plotPage) say(s session.State, text string) {
-	p.sentence.Color = ColorInk
+	ink := ColorInk
 	if s.Fading {
-		p.sentence.Color = ColorSoftInk
+		ink = ColorSoftInk
+	}
+	if p.sentence.Color != ink {
+		p.sentence.Color = ink
+		p.sentence.Refresh()
 	}
 	p.sentence.SetText(text)
-	p.sentence.Refresh()
 }
 
 // empty shows why there is nothing to show; "" shows the rest of the page.

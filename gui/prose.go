@@ -22,6 +22,8 @@ type Prose struct {
 	Bold     bool
 	Lines    int            // most lines that are drawn; 0 draws all
 	Align    fyne.TextAlign // of every line
+
+	passing bool // made for one painting, and not changed afterwards
 }
 
 var _ fyne.Accessible = (*Prose)(nil)
@@ -42,6 +44,12 @@ func (p *Prose) soft() *Prose {
 // bold returns the words in bold.
 func (p *Prose) bold() *Prose {
 	p.Bold = true
+	return p
+}
+
+// once returns the text as one that is made for one painting.
+func (p *Prose) once() *Prose {
+	p.passing = true
 	return p
 }
 

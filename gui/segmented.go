@@ -125,7 +125,7 @@ func (s *Segmented) gap() float32 {
 }
 
 // label is the word of a cell, measured bold so that choosing moves nothing.
-func (s *Segmented) label(i int) *Prose { return NewProse(s.Cells[i], textBody, 1).bold() }
+func (s *Segmented) label(i int) *Prose { return NewProse(s.Cells[i], textBody, 1).bold().once() }
 
 // HeightFor is that of the rows the cells need.
 func (s *Segmented) HeightFor(width float32) float32 {

@@ -19,9 +19,7 @@ type pictureSheet struct {
 
 	drawn   *drawing // nil before the first
 	ordered wish     // the last one
-	scale   float64  // pixels per px that the window draws with
-	raster  *canvas.Raster
-	blank   *image.RGBA
+	image   *canvas.Image
 
 	reading reading
 	reads   bool // there is a reading
@@ -50,12 +48,11 @@ var (
 
 func newSheet(p *Plot) *pictureSheet {
 	s := &pictureSheet{
-		plot: p, scale: 1, blank: image.NewRGBA(image.Rect(0, 0, 1, 1)),
+		plot: p, image: canvas.NewImageFromImage(blank()),
 		across: canvas.NewLine(color.Transparent), down: canvas.NewLine(color.Transparent),
 		dot: canvas.NewCircle(color.Transparent), frame: canvas.NewRectangle(color.Transparent),
 	}
-	s.raster = canvas.NewRaster(s.pixels)
-	s.raster.ScaleMode = canvas.ImageScaleFastest
+	s.image.ScaleMode = canvas.ImageScaleFastest
 	for _, o := range s.marks() {
 		o.Hide()
 	}
@@ -68,23 +65,19 @@ func (s *pictureSheet) marks() []fyne.CanvasObject {
 	return []fyne.CanvasObject{s.across, s.down, s.dot, s.frame}
 }
 
-// pixels is the last drawing. Where the window has another number of pixels for it
-// than it was drawn with, it is drawn anew.
-func (s *pictureSheet) pixels(width, _ int) image.Image {
-	if size := s.Size(); size.Width > 0 {
-		if scale := float64(width) / float64(size.Width); scale > 0 && abs(scale-s.scale) > 0.01 {
-			s.scale = scale
-			s.order()
-		}
-	}
-	if s.drawn == nil || s.drawn.image == nil {
-		s.blank.Set(0, 0, tint(ColorPaper))
-		return s.blank
-	}
-	return s.drawn.image
-}
+// blank is an image of nothing.
+func blank() image.Image { return image.NewRGBA(image.Rect(0, 0, 1, 1)) }
 
-func abs(x float64) float64 { return max(x, -x) }
+// scale is how many pixels the window has for one px.
+func (s *pictureSheet) scale() float64 {
+	c := fyne.CurrentApp().Driver().CanvasForObject(s)
+	if c == nil {
+		return 1
+	}
+	const far = 1000
+	pixels, _ := c.PixelCoordinateForPosition(fyne.NewPos(far, 0))
+	return max(float64(pixels)/far, 0.1)
+}
 
 // pictureStyle is the look of the window for pictures.
 func pictureStyle() figure.Style {
@@ -99,7 +92,7 @@ func pictureStyle() figure.Style {
 func (s *pictureSheet) wish() wish {
 	size := s.Size()
 	w := wish{key: s.plot.key, view: s.plot.view, style: pictureStyle()}
-	w.frame = figure.Frame{Width: float64(size.Width), Height: float64(size.Height), Scale: s.scale}
+	w.frame = figure.Frame{Width: float64(size.Width), Height: float64(size.Height), Scale: s.scale()}
 	if s.plot.coarse && w.frame.Scale > 1 {
 		w.frame.Scale = 1
 	}
@@ -133,20 +126,25 @@ func (s *pictureSheet) take(d *drawing) {
 	}
 	if d.err == nil {
 		s.drawn = d
+		s.image.Image = d.image
 		if s.reads {
 			s.reading, s.reads = d.guide.again(s.reading)
 		}
 		s.placeMarks()
-		canvas.Refresh(s.raster)
+		canvas.Refresh(s.image)
 	}
 	s.plot.took(d)
 }
 
 // forget drops the drawing, say because another plan is open.
 func (s *pictureSheet) forget() {
+	if s.drawn == nil {
+		return
+	}
 	s.drawn, s.ordered, s.reads = nil, wish{}, false
+	s.image.Image = blank()
 	s.placeMarks()
-	canvas.Refresh(s.raster)
+	canvas.Refresh(s.image)
 }
 
 // AccessibilityLabel is what the picture is and says.
@@ -172,10 +170,10 @@ func (s *pictureSheet) CreateRenderer() fyne.WidgetRenderer {
 func (s *pictureSheet) least() fyne.Size { return fyne.NewSize(0, 0) }
 
 func (s *pictureSheet) paint(size fyne.Size) []fyne.CanvasObject {
-	s.raster.Resize(size)
+	s.image.Resize(size)
 	s.order()
 	s.placeMarks()
-	parts := append([]fyne.CanvasObject{s.raster}, s.marks()...)
+	parts := append([]fyne.CanvasObject{s.image}, s.marks()...)
 	if s.plot.stale != "" {
 		parts = append(parts, dashed(fyne.Position{}, size, lineNormal, 6, 4, ColorSoftInk)...)
 	}

@@ -41,7 +41,7 @@ func (f *ValueField) hasOwnUnit() bool {
 func (f *ValueField) unitWidth() float32 { return f.unitText().Width() }
 
 // unitText is the unit, in soft ink.
-func (f *ValueField) unitText() *Prose { return NewProse(f.Unit, textAxis, 1).soft() }
+func (f *ValueField) unitText() *Prose { return NewProse(f.Unit, textAxis, 1).soft().once() }
 
 // window returns the stretch of runes that is drawn: all of them, or as many as
 // fit around the cursor.
