@@ -25,8 +25,8 @@
 //	Gutzwiller     one site in the field of its neighbours
 //	LinkedCluster  exact clusters of up to four sites, added up
 //
-// Chooser asks all and gives their spread; the linked clusters, which take a second to
-// diagonalise, have to be added to it. Every model is derived from one grand
+// Chooser asks all and gives their spread; the linked clusters, which have to be
+// diagonalised first, can be added to it. Every model is derived from one grand
 // potential, so that dn/dT at fixed mu is ds/dmu at fixed T in each of them.
 //
 // Models own their scratch: one per goroutine.

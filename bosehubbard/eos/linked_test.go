@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"math"
+	"slices"
 	"testing"
 )
 
@@ -60,8 +61,11 @@ func TestRingOfFour(t *testing.T) {
 		t.Fatal(err)
 	}
 	s.weight = make([]float64, len(s.energy))
-	near(t, "ground state", s.energy[0], -3.9765130137, 1e-10)
-	near(t, "highest state", s.energy[34], 24.6984601196, 1e-10)
+	if len(s.energy) != 35 {
+		t.Fatalf("%d states, want 35", len(s.energy))
+	}
+	near(t, "ground state", slices.Min(s.energy), -3.9765130137, 1e-10)
+	near(t, "highest state", slices.Max(s.energy), 24.6984601196, 1e-10)
 	warm := s.average(0, 0.5)
 	near(t, "energy", warm.energy, -1.94884884, 1e-8)
 	near(t, "entropy", warm.entropy, 1.46604423, 1e-8)
@@ -70,6 +74,47 @@ func TestRingOfFour(t *testing.T) {
 		sum += c * float64(k)
 	}
 	near(t, "atoms by the counts", sum, 4, 1e-12)
+}
+
+// Every graph of equal bonds has a swap, and the trace and the square of the
+// Hamiltonian do not depend on the cut into both parities.
+func TestParity(t *testing.T) {
+	tunnelling := []float64{1, 0.7, 0.4}
+	for _, c := range expand([]int8{0, 1, 2}) {
+		for _, atoms := range []int{0, 1, 5} {
+			s := &spectrum{sites: c.graph.sites}
+			if err := s.sector(c.graph, tunnelling, 3, atoms); err != nil {
+				t.Fatal(err)
+			}
+			first, second, wantFirst, wantSecond := 0.0, 0.0, 0.0, 0.0
+			for _, e := range s.energy {
+				first, second = first+e, second+e*e
+			}
+			states := placed(c.graph.sites, atoms)
+			for _, state := range states {
+				u := 3 * pairsOf(state)
+				wantFirst, wantSecond = wantFirst+u, wantSecond+u*u
+				for i, row := range c.graph.bond {
+					for k, kind := range row {
+						if kind > 0 {
+							j := tunnelling[kind-1]
+							wantSecond += j * j * float64(state[i]) * float64(state[k]+1)
+						}
+					}
+				}
+			}
+			if len(s.energy) != len(states) {
+				t.Errorf("%v: %d states, want %d", c.graph, len(s.energy), len(states))
+			}
+			near(t, "trace", first, wantFirst, 1e-12)
+			near(t, "trace of the square", second, wantSecond, 1e-12)
+		}
+	}
+	for _, c := range expand([]int8{0, 0}) {
+		if c.graph.sites > 1 && swapOf(c.graph) == [clusterSites]int{0, 1, 2, 3} {
+			t.Errorf("%v has no swap", c.graph)
+		}
+	}
 }
 
 // Without tunnelling it is the atomic limit; with little, it differs from it in the

@@ -38,41 +38,27 @@ func solve(ctx context.Context, g graph, tunnelling []float64, u float64, step f
 	return s, nil
 }
 
-// sector adds the states of one number of atoms.
+// sector adds the states of one number of atoms, those that a swap of sites leaves as
+// they are and those whose sign it changes apart.
 func (s *spectrum) sector(g graph, tunnelling []float64, u float64, atoms int) error {
-	states := placed(g.sites, atoms)
-	index := map[[clusterSites]int8]int{}
-	for i, state := range states {
-		index[state] = i
-	}
-	h := mat.NewSymDense(len(states), nil)
-	for i, state := range states {
-		h.SetSym(i, i, u*pairsOf(state))
-		for from := range g.sites {
-			for to := range from {
-				kind := g.bond[from][to]
-				if kind == 0 || state[from] == 0 {
-					continue
-				}
-				next := state
-				next[from]--
-				next[to]++
-				h.SetSym(i, index[next], -tunnelling[kind-1]*math.Sqrt(float64(state[from])*float64(next[to])))
-			}
+	for _, parity := range []float64{1, -1} {
+		b := newBasis(g, atoms, parity)
+		if len(b.states) == 0 {
+			continue
 		}
+		var eig mat.EigenSym
+		if !eig.Factorize(b.hamiltonian(g, tunnelling, u), true) {
+			return fmt.Errorf("eos: %d atoms on %d sites could not be diagonalised", atoms, g.sites)
+		}
+		var vectors mat.Dense
+		eig.VectorsTo(&vectors)
+		s.collect(b.states, eig.Values(nil), vectors.RawMatrix().Data, g.sites, atoms)
 	}
-	var eig mat.EigenSym
-	if !eig.Factorize(h, true) {
-		return fmt.Errorf("eos: %d atoms on %d sites could not be diagonalised", atoms, g.sites)
-	}
-	var vectors mat.Dense
-	eig.VectorsTo(&vectors)
-	s.collect(states, eig.Values(nil), vectors.RawMatrix().Data, g.sites, atoms)
 	return nil
 }
 
 // collect appends the averages of the states with the columns of vectors.
-func (s *spectrum) collect(states [][clusterSites]int8, values, vectors []float64, sites, atoms int) {
+func (s *spectrum) collect(states []occupied, values, vectors []float64, sites, atoms int) {
 	n := len(states)
 	first := len(s.counts)
 	s.counts = append(s.counts, make([]float64, n*Occupations)...)
@@ -88,29 +74,6 @@ func (s *spectrum) collect(states [][clusterSites]int8, values, vectors []float6
 		}
 		s.energy, s.atoms, s.pairs = append(s.energy, e), append(s.atoms, float64(atoms)), append(s.pairs, pairs)
 	}
-}
-
-func pairsOf(state [clusterSites]int8) float64 {
-	sum := 0.0
-	for _, n := range state {
-		sum += float64(n) * float64(n-1) / 2
-	}
-	return sum
-}
-
-// placed lists the ways to place atoms on sites.
-func placed(sites, atoms int) [][clusterSites]int8 {
-	if sites == 1 {
-		return [][clusterSites]int8{{int8(atoms)}}
-	}
-	var out [][clusterSites]int8
-	for last := range atoms + 1 {
-		for _, state := range placed(sites-1, atoms-last) {
-			state[sites-1] = int8(last)
-			out = append(out, state)
-		}
-	}
-	return out
 }
 
 // sums are grand canonical averages of a cluster, all of them extensive.
