@@ -100,7 +100,8 @@ func (h *Operator) Correlations(ctx context.Context, dst, x, scratch []float64, 
 	if err := h.Occupations(ctx, n, square, x, w); err != nil {
 		return err
 	}
-	image := h.split.image(sites)
+	c := &correlator{Operator: h, ctx: ctx, x: x, scratch: scratch, workspace: h.NewWorkspace(w.workers), image: h.split.image(sites)}
+	image := c.image
 	for i := range sites {
 		dst[i*sites+i] = n[i]
 		for j := i + 1; j < sites; j++ {
@@ -108,7 +109,7 @@ func (h *Operator) Correlations(ctx context.Context, dst, x, scratch []float64, 
 			if h.parity != 0 && min(a, b)*sites+max(a, b) < i*sites+j {
 				dst[i*sites+j] = dst[a*sites+b] // done as its mirror image
 			} else {
-				value, err := h.correlation(ctx, i, j, x, scratch, w.workers)
+				value, err := c.of(i, j)
 				if err != nil {
 					return err
 				}
@@ -131,19 +132,28 @@ func (s *split) image(sites int) []int {
 	return place
 }
 
-// correlation takes the expectation value of (b_i^+ b_j + b_j^+ b_i)/2, averaged
-// with its mirror image, as that of a Hamiltonian with no other term.
-func (h *Operator) correlation(ctx context.Context, i, j int, x, scratch []float64, workers int) (float64, error) {
-	image := h.split.image(h.terms.Sites)
-	t := &Terms{Sites: h.terms.Sites, Hops: []Hop{{i, j, 0.25}, {image[i], image[j], 0.25}}}
-	pair, err := newOperator(ctx, t, h.split, h.atoms, Options{
-		MemoryBytes: 1 << 62, Vectors: 2, MaxOccupation: h.most, Parity: h.parity,
-	})
+// correlator holds what the pairs of sites share.
+type correlator struct {
+	*Operator
+	ctx        context.Context
+	x, scratch []float64
+	workspace  *Workspace
+	image      []int
+	pair       *Operator // of the pair before
+}
+
+// of takes the expectation value of (b_i^+ b_j + b_j^+ b_i)/2, averaged with its
+// mirror image, as that of a Hamiltonian with no other term.
+func (c *correlator) of(i, j int) (float64, error) {
+	t := &Terms{Sites: c.terms.Sites, Hops: []Hop{{i, j, 0.25}, {c.image[i], c.image[j], 0.25}}}
+	opt := Options{MemoryBytes: 1 << 62, Vectors: 2, MaxOccupation: c.most, Parity: c.parity}
+	pair, err := newOperator(c.ctx, t, c.split, c.atoms, opt, c.pair)
 	if err != nil {
 		return 0, err
 	}
+	c.pair, c.workspace.operator = pair, pair
 	sum := [1]float64{}
-	p := Product{Dst: [][]float64{scratch}, X: [][]float64{x}, A: 1, XY: sum[:]}
-	err = pair.Combine(ctx, p, pair.NewWorkspace(workers))
+	p := Product{Dst: [][]float64{c.scratch}, X: [][]float64{c.x}, A: 1, XY: sum[:]}
+	err = pair.Combine(c.ctx, p, c.workspace)
 	return sum[0], err
 }

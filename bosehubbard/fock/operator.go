@@ -72,11 +72,12 @@ func NewOperatorOf(ctx context.Context, t *Terms, atoms int, opt Options) (*Oper
 		}
 		mirror = place
 	}
-	return newOperator(ctx, t, newSplit(t, mirror), atoms, opt)
+	return newOperator(ctx, t, newSplit(t, mirror), atoms, opt, nil)
 }
 
-// newOperator builds the Hamiltonian on a given split.
-func newOperator(ctx context.Context, t *Terms, s *split, atoms int, opt Options) (*Operator, error) {
+// newOperator builds the Hamiltonian on a given split, in the memory of an operator
+// that is no longer needed if there is one.
+func newOperator(ctx context.Context, t *Terms, s *split, atoms int, opt Options, old *Operator) (*Operator, error) {
 	if err := opt.fitTables(t.Sites, atoms); err != nil {
 		return nil, err
 	}
@@ -84,16 +85,19 @@ func newOperator(ctx context.Context, t *Terms, s *split, atoms int, opt Options
 	if err := h.fit(opt); err != nil {
 		return nil, err
 	}
+	if old == nil {
+		old = &Operator{}
+	}
 	h.rowSectors, h.colSectors = map[int]*sector{}, map[int]*sector{}
 	if h.parity != 0 {
 		h.rowSectors = h.colSectors // the halves are images of each other
 	}
 	for i := range h.blocks {
 		b := &h.blocks[i]
-		if err := buildSector(ctx, h.rowSectors, h.left, b.left); err != nil {
+		if err := buildSector(ctx, h.rowSectors, h.left, b.left, old.rowSectors); err != nil {
 			return nil, err
 		}
-		if err := buildSector(ctx, h.colSectors, h.right, b.right); err != nil {
+		if err := buildSector(ctx, h.colSectors, h.right, b.right, old.colSectors); err != nil {
 			return nil, err
 		}
 	}
@@ -105,9 +109,9 @@ func newOperator(ctx context.Context, t *Terms, s *split, atoms int, opt Options
 }
 
 // buildSector builds the sector of t atoms unless it is there.
-func buildSector(ctx context.Context, built map[int]*sector, p *part, t int) (err error) {
+func buildSector(ctx context.Context, built map[int]*sector, p *part, t int, old map[int]*sector) (err error) {
 	if built[t] == nil {
-		built[t], err = p.build(ctx, t)
+		built[t], err = p.build(ctx, t, old[t])
 	}
 	return err
 }

@@ -72,11 +72,14 @@ func (p *part) numberOfHops(t int) int {
 	return 2 * len(p.bonds) * pairs
 }
 
-// build computes the sector of t atoms, looking at ctx between stretches of
-// states.
-func (p *part) build(ctx context.Context, t int) (*sector, error) {
-	s := &sector{count: p.count(t)}
-	s.energy, s.span, s.order = make([]float64, s.count), make([]span, s.count), make([]int32, s.count)
+// build computes the sector of t atoms, looking at ctx between stretches of states.
+// It takes the memory of old, a sector of as many states, if that is not nil.
+func (p *part) build(ctx context.Context, t int, old *sector) (*sector, error) {
+	s := old
+	if s == nil {
+		n := p.count(t)
+		s = &sector{count: n, energy: make([]float64, n), span: make([]span, n), order: make([]int32, n)}
+	}
 	if err := p.sort(ctx, s, t); err != nil {
 		return nil, err
 	}
@@ -118,7 +121,7 @@ func (p *part) sort(ctx context.Context, s *sector, t int) error {
 	if s.count == 0 {
 		return nil
 	}
-	s.pairs = make([]hopPair, 0, total)
+	s.pairs = slices.Grow(s.pairs[:0], total)
 	s.classEnd = make([]int32, slices.Max(pairs)+1)
 	for _, k := range pairs {
 		s.classEnd[k]++
