@@ -32,6 +32,10 @@ type Thermal struct {
 // energy: a factor of 1.155 apart.
 const rungs = 97
 
+// infinite is the |beta| over the unit of energy below which T counts as infinite:
+// rounding of the energy.
+const infinite = 1e-10
+
 // Match returns the canonical ensemble of atoms on a lattice with a given energy
 // per atom [Hz], of either sign of T: what the state would relax to if it forgot
 // all but its energy.
@@ -63,6 +67,9 @@ func Match(ctx context.Context, l *lattice.Lattice, m bosehubbard.Model, atoms i
 	}
 	between := newQuintic(points[at], points[at+1])
 	beta := between.where(total)
+	if math.Abs(beta)*unit < infinite {
+		beta = 0
+	}
 	t := &Thermal{Beta: beta, PerTunnelling: math.NaN(), Exact: averages.Exact}
 	logZ, _ := between.at(beta)
 	t.EntropyPerAtom = (logZ + beta*total) / float64(atoms)

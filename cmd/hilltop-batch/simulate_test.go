@@ -113,6 +113,21 @@ func TestSimulateWithoutStages(t *testing.T) {
 	}
 }
 
+// A number state of free atoms on a ring has the mean energy of all states: beta = 0,
+// where the temperature is null.
+func TestSimulateAtInfiniteTemperature(t *testing.T) {
+	answer := object(t, 0, "simulate", write(t, []byte(`{
+	  "format": "hilltop-plan", "version": 1, "aim_sign": "negative",
+	  "model": {"sites": [4], "periodic": [true], "atoms": 4, "tunnelling_hz": 1, "interaction_hz": 0, "fock": [1, 1, 1, 1]}}`)))
+	end := answer["final"].(map[string]any)
+	if value, there := end["temperature_per_tunnelling"]; !there || value != nil {
+		t.Errorf("temperature %v, want null", value)
+	}
+	if s := 4 * end["entropy_per_atom_kb"].(float64); math.Abs(s-math.Log(35)) > 1e-9 {
+		t.Errorf("entropy %g, want ln 35", s)
+	}
+}
+
 func TestSimulateRefuses(t *testing.T) {
 	flip := write(t, []byte(flipPlan))
 	large := write(t, []byte(strings.NewReplacer("[6]", "[14]", `"atoms": 6`, `"atoms": 14`, `, "fock": [1, 1, 1, 1, 1, 1]`, "").Replace(flipPlan)))
