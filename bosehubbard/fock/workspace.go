@@ -23,7 +23,7 @@ func (h *Operator) NewWorkspace(workers int) *Workspace {
 	for i := range h.blocks {
 		most = max(most, min(4, h.blocks[i].rows)*h.blocks[i].cols)
 	}
-	for range min(w.workers, len(h.tasks)) {
+	for range w.workers {
 		w.scratch = append(w.scratch, make([]float64, most))
 	}
 	return w
@@ -67,7 +67,7 @@ func (h *Operator) Combine(ctx context.Context, p Product, w *Workspace) error {
 	}
 	sums := w.sums[len(p.X)*first:]
 	err := blocks.Run(ctx, w.workers, len(p.X)*first, func(worker, i int) {
-		w.sums[i] = h.doRows(&h.tasks[i%first], &p, i/first, w.scratch[worker%len(w.scratch)])
+		w.sums[i] = h.doRows(&h.tasks[i%first], &p, i/first, w.scratch[worker])
 	})
 	if err == nil && second > 0 {
 		err = blocks.Run(ctx, w.workers, len(p.X)*second, func(_, i int) {
