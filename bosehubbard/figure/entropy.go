@@ -9,6 +9,7 @@ type EntropyCurve struct {
 	Energy  []float64 // Hz, ascending
 	Entropy []float64 // kB
 	Beta    []float64 // dS/dE, 1/Hz; may be infinite at the ends
+	Stale   bool      // of before: drawn dashed and soft, nothing is read off it
 }
 
 // counted is the part of the curve around its peak that counts at least one state:
@@ -33,7 +34,7 @@ func (c *EntropyCurve) counted() *EntropyCurve {
 	if past-first < 2 || !(c.Entropy[peak] > 0) {
 		return nil
 	}
-	return &EntropyCurve{c.Name, c.Energy[first:past], c.Entropy[first:past], c.Beta[first:past]}
+	return &EntropyCurve{c.Name, c.Energy[first:past], c.Entropy[first:past], c.Beta[first:past], c.Stale}
 }
 
 // EntropyPoint is a place on S(E).
@@ -49,6 +50,7 @@ type EntropyPanel struct {
 	Name    string
 	Box     Rect
 	Largest float64 // S/N at the peak, kB; stands at 90 % of the width
+	Stale   bool    // of before: no state, no ticks
 
 	Points  []EntropyPoint
 	Peak    EntropyPoint  // where beta is 0 and S is largest
@@ -59,6 +61,7 @@ type EntropyPanel struct {
 	Unit    string       // of the ruler
 	Ticks   []RulerTick  // of -1/T, from the lowest to the highest energy
 	Spans   [][2]float64 // energies, Hz, between which -1/T is single-valued
+	rising  []float64    // -1/T there, 1/Hz
 }
 
 // RulerTick is a value of -1/T at the energy of that temperature.
@@ -114,7 +117,7 @@ func (b *builder) entropy() {
 		return
 	}
 	e, curve := g.Entropy, b.curve
-	e.Name = curve.Name
+	e.Name, e.Stale = curve.Name, curve.Stale
 	for i, hz := range curve.Energy {
 		p := EntropyPoint{Hz: hz, Entropy: curve.Entropy[i], Beta: curve.Beta[i]}
 		e.Largest = math.Max(e.Largest, p.Entropy)
@@ -125,7 +128,7 @@ func (b *builder) entropy() {
 	}
 	e.Peak = e.peak()
 	b.locate(&e.Peak)
-	if g.State != nil {
+	if g.State != nil && !e.Stale {
 		if p, ok := e.at(g.State.Hz); ok {
 			b.locate(&p)
 			e.State = &p

@@ -14,8 +14,12 @@ func (g *Geometry) drawEntropy(p *pen) {
 	for _, s := range [...]float64{0, e.Largest} {
 		p.line(edge, Point{e.X(s), g.Plot.Y1 - 4}, Point{e.X(s), g.Plot.Y1})
 	}
-	bands(e.line(), g.Sky.Y1, g.Ground.Y0, func(q []Point) { p.line(stroke{width: 2.5, color: ink.Ink}, q...) })
-	if g.Scale.Holds(e.Peak.Hz) {
+	curve := stroke{width: 2.5, color: ink.Ink}
+	if e.Stale {
+		curve = stroke{width: 1.5, color: ink.Soft, dash: dashes[Pinned]}
+	}
+	bands(e.line(), g.Sky.Y1, g.Ground.Y0, func(q []Point) { p.line(curve, q...) })
+	if !e.Stale && g.Scale.Holds(e.Peak.Hz) {
 		p.circle(e.Peak.At, 4.5, stroke{width: 1.5, color: ink.Ink})
 	}
 }

@@ -17,7 +17,11 @@ func (b *builder) labelEntropy() {
 	b.placer.put(SoftNumber, "0", anchor{Point{e.X(0), letters}, 0.5, 0})
 	b.placer.put(SoftNumber, Number(e.Largest, 3), anchor{Point{e.X(e.Largest), letters}, 0.5, 0})
 	centre := (e.Box.X0 + e.Box.X1) / 2
-	for _, text := range [...]string{"S/N in kB, " + e.Name, e.Name, "S/N in kB", "S/N"} {
+	texts := []string{"S/N in kB, " + e.Name, "S/N, " + e.Name, "S/N in kB", "S/N"}
+	if e.Stale {
+		texts = []string{"S/N in kB, from before", "from before", "before"}
+	}
+	for _, text := range texts {
 		if width, _ := b.placer.box(Word, text); width <= e.Box.Width() && b.placer.put(Word, text, anchor{Point{centre, names}, 0.5, 0}) {
 			break
 		}

@@ -16,10 +16,13 @@ func (b *builder) ruler() {
 	if !(e.PerUnit > 0) {
 		e.PerUnit, e.Unit = e.decade()
 	}
+	if e.Stale {
+		return
+	}
 	e.Spans = e.singleValued()
 	room := tickRoom * b.style.text()
 	add := func(value float64) {
-		hz, ok := e.energyAt(-value / e.PerUnit)
+		hz, ok := e.energyAt(value / e.PerUnit)
 		if !ok || !b.g.Scale.Holds(hz) {
 			return
 		}
@@ -59,42 +62,69 @@ func (e *EntropyPanel) decade() (hz float64, unit string) {
 	return 1e9, "kB/GHz"
 }
 
-// singleValued lists where no other energy has the same -1/T: all that lies below
-// has a smaller one, all above a larger one.
+// singleValued finds the branch around the peak on which -1/T rises with the energy,
+// so that each value has one place. Levels of a small system make dS/dE rough: where
+// its mean over a few points rises further, that is taken.
 func (e *EntropyPanel) singleValued() [][2]float64 {
-	n := len(e.Points)
-	above := make([]float64, n+1) // the smallest -beta from i on
-	above[n] = math.Inf(1)
-	for i := n - 1; i >= 0; i-- {
-		above[i] = math.Min(above[i+1], -e.Points[i].Beta)
+	e.rising = make([]float64, len(e.Points))
+	for i, p := range e.Points {
+		e.rising[i] = -p.Beta
 	}
-	var spans [][2]float64
-	below := math.Inf(-1)
-	for i := 0; i+1 < n; i++ {
-		p, q := e.Points[i], e.Points[i+1]
-		below = math.Max(below, -p.Beta)
-		if !(-p.Beta >= below && -q.Beta <= above[i+1] && -q.Beta > -p.Beta) {
-			continue
-		}
-		if k := len(spans); k > 0 && spans[k-1][1] == p.Hz {
-			spans[k-1][1] = q.Hz
-		} else {
-			spans = append(spans, [2]float64{p.Hz, q.Hz})
+	top := 0
+	for i, p := range e.Points {
+		if p.Entropy > e.Points[top].Entropy {
+			top = i
 		}
 	}
-	return spans
+	smooth := means(e.rising, len(e.rising)/smoothing)
+	first, last := branch(e.rising, top)
+	if a, b := branch(smooth, top); b-a > last-first {
+		first, last, e.rising = a, b, smooth
+	}
+	if first == last {
+		return nil
+	}
+	return [][2]float64{{e.Points[first].Hz, e.Points[last].Hz}}
 }
 
-// energyAt returns the only energy with a beta; ok is false where there is none or
-// more than one.
-func (e *EntropyPanel) energyAt(beta float64) (hz float64, ok bool) {
+// smoothing is which part of the curve dS/dE is averaged over, to either side.
+const smoothing = 32
+
+// branch is how far a list rises around one of its places.
+func branch(v []float64, top int) (first, last int) {
+	first, last = top, top
+	for first > 0 && v[first-1] < v[first] {
+		first--
+	}
+	for last+1 < len(v) && v[last+1] > v[last] {
+		last++
+	}
+	return first, last
+}
+
+// means averages each entry with so many on either side, fewer at the ends.
+func means(v []float64, reach int) []float64 {
+	out := make([]float64, len(v))
+	for i := range v {
+		near := min(reach, i, len(v)-1-i)
+		sum := 0.0
+		for _, x := range v[i-near : i+near+1] {
+			sum += x
+		}
+		out[i] = sum / float64(2*near+1)
+	}
+	return out
+}
+
+// energyAt returns the energy of a value of -dS/dE on the branch; ok is false off it.
+func (e *EntropyPanel) energyAt(cold float64) (hz float64, ok bool) {
 	for _, span := range e.Spans {
 		for i := 0; i+1 < len(e.Points); i++ {
-			p, q := e.Points[i], e.Points[i+1]
-			if p.Hz < span[0] || q.Hz > span[1] || p.Beta < beta || q.Beta > beta || math.IsInf(p.Beta-q.Beta, 0) {
+			p, q, a, b := e.Points[i].Hz, e.Points[i+1].Hz, e.rising[i], e.rising[i+1]
+			if p < span[0] || q > span[1] || a > cold || b < cold || math.IsInf(b-a, 0) {
 				continue
 			}
-			return p.Hz + (p.Beta-beta)/(p.Beta-q.Beta)*(q.Hz-p.Hz), true
+			return p + (cold-a)/(b-a)*(q-p), true
 		}
 	}
 	return 0, false

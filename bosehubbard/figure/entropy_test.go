@@ -140,16 +140,35 @@ func TestRulerIsBlankWhereNotSingleValued(t *testing.T) {
 		}
 	}
 	g := CeilingGeometry(handmade(nil), frames[1], Style{Palette: Light()}, CeilingOptions{Entropy: c})
-	if len(g.Entropy.Spans) != 2 {
-		t.Fatalf("spans %v, want one below and one above the dip", g.Entropy.Spans)
+	if len(g.Entropy.Spans) != 1 {
+		t.Fatalf("spans %v, want the branch below the dip", g.Entropy.Spans)
 	}
-	low, high := g.Entropy.Spans[0][1], g.Entropy.Spans[1][0]
-	if low > 400 || high < 600 {
-		t.Errorf("single-valued up to %g and from %g Hz, want a gap around 400 to 700", low, high)
+	end := g.Entropy.Spans[0][1]
+	if end < 300 || end > 700 {
+		t.Errorf("single-valued up to %g Hz, want to the dip from 500 to 700", end)
 	}
 	for _, tick := range g.Entropy.Ticks {
-		if tick.Hz > low && tick.Hz < high {
-			t.Errorf("tick %g at %g Hz stands in the gap", tick.Value, tick.Hz)
+		if tick.Hz > end {
+			t.Errorf("tick %g at %g Hz stands above the branch", tick.Value, tick.Hz)
+		}
+	}
+}
+
+// Rough levels, as of a small system, still have a temperature in the mean.
+func TestRulerOfARoughCurve(t *testing.T) {
+	c := parabola(-200, 1500)
+	for i := range c.Beta {
+		c.Beta[i] += 0.03 / 450 * float64(1-2*(i%2)) // steps between samples are 0.012
+	}
+	g := CeilingGeometry(handmade(nil), frames[1], Style{Palette: Light()}, CeilingOptions{Entropy: c})
+	if len(g.Entropy.Ticks) < 5 {
+		t.Fatalf("ticks %+v, want five at least", g.Entropy.Ticks)
+	}
+	for _, tick := range g.Entropy.Ticks {
+		// The mean over seven samples leaves a seventh of the roughness.
+		want := -200 + tick.Value*1500*1500/(2*450)
+		if off := math.Abs(tick.Hz - want); off > 0.03/7*1500*1500/(2*450)+30 {
+			t.Errorf("tick %g at %g Hz, want %g", tick.Value, tick.Hz, want)
 		}
 	}
 }
@@ -280,5 +299,22 @@ func TestTemperatureInWords(t *testing.T) {
 		if got := Temperature(tc.beta, 3); got != tc.want {
 			t.Errorf("beta %g: %q, want %q", tc.beta, got, tc.want)
 		}
+	}
+}
+
+func TestNothingIsReadOffAnOldCurve(t *testing.T) {
+	c, state := parabola(-200, 1500), 800.0
+	c.Stale = true
+	picture := &Ceiling{handmade(nil), CeilingOptions{Entropy: c, State: &state}}
+	g := picture.Geometry(frames[1], Style{Palette: Light()})
+	if e := g.Entropy; len(e.Points) == 0 || len(e.Ticks) != 0 || len(e.Spans) != 0 || e.State != nil {
+		t.Errorf("an old curve: %d points, ticks %v, spans %v, state %v; want the points alone", len(e.Points), e.Ticks, e.Spans, e.State)
+	}
+	said := false
+	for _, l := range g.Labels {
+		said = said || strings.HasSuffix(l.Text, "from before")
+	}
+	if !said {
+		t.Error("the picture does not say that the curve is of before")
 	}
 }

@@ -67,9 +67,10 @@ type smallState struct {
 	calibrated bool    // or about to be
 }
 
-// forget drops what belongs to another document; the pace of the machine stays.
+// forget drops what belongs to another document; the size and the pace of the machine
+// stay.
 func (e *smallState) forget() {
-	*e = smallState{pace: e.pace, calibrated: e.calibrated}
+	*e = smallState{sites: e.sites, pace: e.pace, calibrated: e.calibrated}
 }
 
 // entropy returns what a view shows of S(E). The caller holds mu.

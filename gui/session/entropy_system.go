@@ -36,7 +36,7 @@ func smallKind(p *plan.Plan, r *report.Report) (*smallPlan, error) {
 	end := StageAt(r, len(r.Stages))
 	switch {
 	case p.Levels != nil:
-		return nil, errors.New("levels have their own S(E)")
+		return nil, errors.New("")
 	case end == nil:
 		return nil, errors.New("the report has no stage")
 	case end.InteractionHz == nil:

@@ -227,7 +227,7 @@ func TestLevelsHaveNoSmallSystem(t *testing.T) {
 	s, v := following(t, []byte(`{"format":"hilltop-plan","version":1,"levels":{"energies_hz":[-8000,8000],"degeneracies":[1,1],"bodies":1e20,"inner_time_s":1e-4,"outer_time_s":300,"energy_hz_per_body":5000}}`))
 	st := waitFor(t, v, "a report", func(st State) bool { return st.Report != nil })
 	s.FollowEntropy()
-	if len(st.Entropy.Sizes) != 0 || st.Entropy.Why == "" {
+	if len(st.Entropy.Sizes) != 0 || st.Entropy.Why != "" {
 		t.Errorf("levels offer %+v", st.Entropy)
 	}
 }
