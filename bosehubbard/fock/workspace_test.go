@@ -28,6 +28,7 @@ func shared(t testing.TB) map[string]*Operator {
 		"odd, odd atoms":      mustOperator(t, chainTerms(t, 10), 9, Options{Parity: -1}),
 		"odd chain, odd":      mustOperator(t, chainTerms(t, 9), 9, Options{Parity: -1}),
 		"box":                 mustOperator(t, boxTerms(t, []int{3, 3}, []bool{false, true}, plane), 9, Options{Parity: 1}),
+		"one block":           mustOperator(t, chainTerms(t, 2), 5000, Options{}),
 		"limited occupation":  mustOperator(t, chainTerms(t, 10), 10, Options{MaxOccupation: 4}),
 		"even and at most 40": mustOperator(t, chainTerms(t, 4), 60, Options{MaxOccupation: 40, Parity: 1}),
 	}
@@ -37,7 +38,7 @@ func shared(t testing.TB) map[string]*Operator {
 // of vectors and sums.
 func TestSameBits(t *testing.T) {
 	for name, h := range shared(t) {
-		const k = 3
+		const k = 5
 		x, start := make([][]float64, k), make([][]float64, k)
 		for i := range k {
 			x[i], start[i] = make([]float64, h.Len()), make([]float64, h.Len())
