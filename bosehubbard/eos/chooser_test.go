@@ -128,3 +128,37 @@ func TestGutzwillerIsNotAlone(t *testing.T) {
 		t.Errorf("%d of 75 points have no model, want most covered", alone)
 	}
 }
+
+// A superfluid on which only the single site has an answer: refused at |U|/zJ = 1.5,
+// taken at 4.
+func TestAloneInTheSuperfluid(t *testing.T) {
+	for _, sign := range []float64{1, -1} {
+		terms := Cosine([]float64{1, 1}, sign*6)
+		if p := at(t, siteOf(t, terms), sign*10, sign*0.25); !(p.Order > 0) {
+			t.Fatalf("%+v is no superfluid", p)
+		}
+		var none *NoModelError
+		if _, err := must[*Chooser](t)(NewChooser(terms)).Choose(sign*10, sign*0.25); !errors.As(err, &none) {
+			t.Errorf("U/J = %g: %v, want a NoModelError", sign*6, err)
+		} else if len(none.Refused) != 5 {
+			t.Errorf("%d reasons for 5 models: %v", len(none.Refused), none)
+		}
+		choice, err := must[*Chooser](t)(NewChooser(Cosine([]float64{1, 1}, sign*16))).Choose(0, sign*1.25)
+		if err != nil || choice.Model != "Gutzwiller" || len(choice.Models) != 1 || !(choice.Point.Order > 0) {
+			t.Errorf("U/J = %g: %+v, %v, want Gutzwiller alone", sign*16, choice, err)
+		}
+	}
+}
+
+// The top of a real band is steeper than its bottom, so that at zJ/U = 1/6 of the
+// nearest neighbours the insulator has melted at the top only.
+func TestRealBandInMeanField(t *testing.T) {
+	for _, row := range []struct{ sign, coupling float64 }{{1, 3.84}, {-1, 4.16}} {
+		hops := []float64{1, -0.04}
+		m := siteOf(t, Terms{Hops: [][]float64{hops, hops}, Interaction: row.sign * 24})
+		p := at(t, m, row.sign*12, math.Inf(int(row.sign)))
+		if melted := row.coupling > 4; (p.Order > 0) != melted {
+			t.Errorf("sign %g: order %g at zJ = %g Hz, boundary 4 Hz", row.sign, p.Order, row.coupling)
+		}
+	}
+}
