@@ -13,6 +13,9 @@ import (
 //
 // It reports no height for a width to the toolkit, which cannot ask; a layout that
 // wraps calls [Prose.HeightFor].
+//
+// The toolkit knows a text only once it is drawn, since it keeps what it knows for a
+// minute and many texts are only measured.
 type Prose struct {
 	widget.BaseWidget
 
@@ -30,9 +33,7 @@ var _ fyne.Accessible = (*Prose)(nil)
 
 // NewProse returns ink text of a size at 100 %, on at most the given lines.
 func NewProse(text string, size float32, lines int) *Prose {
-	p := &Prose{Text: text, TextSize: size, Color: ColorInk, Lines: lines}
-	p.ExtendBaseWidget(p)
-	return p
+	return &Prose{Text: text, TextSize: size, Color: ColorInk, Lines: lines}
 }
 
 // soft returns the text in soft ink.
@@ -77,6 +78,9 @@ func (p *Prose) AccessibilityRole() fyne.AccessibleRole { return fyne.Accessible
 func (p *Prose) HeightFor(width float32) float32 {
 	return float32(len(p.wrap(width))) * p.lineHeight()
 }
+
+// MinSize is the whole text for one line, else the widest word by the lines.
+func (p *Prose) MinSize() fyne.Size { return p.least() }
 
 // Width is that of the text on one line.
 func (p *Prose) Width() float32 { return p.lineWidth(p.Text) }
