@@ -39,14 +39,14 @@ func (r *roomPart) stop() {
 
 // roomAfter is how long a plan rests before the search begins: it takes the time of
 // some hundred judgements.
-const roomAfter = 300 * time.Millisecond
+const roomAfter = 500 * time.Millisecond
 
-// Set starts the search once the plan rests, stops it when a knob is dragged, and
-// shows what was found.
+// Set starts the search once the plan rests, stops it when the plan changes, so that
+// it does not slow down the verdict, and shows what was found.
 func (r *roomPart) Set(s session.State) {
 	job := s.Jobs[session.RoomJob]
 	switch {
-	case s.Dragging && job.Running:
+	case (s.Dragging || s.Stale) && job.Running:
 		r.tools.desk.StopJob(session.RoomJob)
 		r.asked = 0
 	case s.Judged != r.asked && !s.Stale && !s.Dragging && !r.held:

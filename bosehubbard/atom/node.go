@@ -109,7 +109,8 @@ func parseList(decoder *json.Decoder, path string, depth int) (node, error) {
 	return node{path, list}, err
 }
 
+// escapes are those of RFC 6901.
+var escapes = strings.NewReplacer("~", "~0", "/", "~1")
+
 // escape writes a key as one step of an RFC 6901 path.
-func escape(key string) string {
-	return strings.NewReplacer("~", "~0", "/", "~1").Replace(key)
-}
+func escape(key string) string { return escapes.Replace(key) }
