@@ -2,7 +2,6 @@ package exact
 
 import (
 	"context"
-	"fmt"
 	"math"
 
 	"hilltop/bosehubbard/num/krylov"
@@ -20,8 +19,8 @@ type vector = krylov.Vector
 // Source: Blanes and Moan, Appl. Numer. Math. 56, 1519 (2006), from memory; the
 // order is tested.
 var (
-	gauss  = math.Sqrt(3) / 6
-	weight = [2]float64{0.25 + gauss, 0.25 - gauss}
+	gauss   = math.Sqrt(3) / 6
+	weights = [2]float64{0.25 + gauss, 0.25 - gauss}
 )
 
 // stepper holds the couplings of a step and the scratch of its estimate.
@@ -38,76 +37,11 @@ type stepper struct {
 }
 
 func newStepper(couplingCount, length int) stepper {
-	make := func() couplings { return make(couplings, couplingCount) }
+	list := func() couplings { return make(couplings, couplingCount) }
 	return stepper{
-		nodes: [2]couplings{make(), make()}, first: make(), second: make(),
-		limiter: limiter{trust: mostTrust}, estimate: newEstimate(make, length),
+		nodes: [2]couplings{list(), list()}, first: list(), second: list(),
+		limiter: limiter{trust: mostTrust}, estimate: newEstimate(list, length),
 	}
-}
-
-// most and least factors of one change of pace, and the share of the allowed
-// error that is aimed at, as a factor of the step.
-const (
-	leastChange = 0.02
-	mostChange  = 3
-	cautious    = 0.9
-)
-
-// shares of the tolerance: for what stays of the errors of all steps, and for what
-// one step has to give back at the end.
-const (
-	stayingShare   = 0.5
-	returningShare = 0.125
-)
-
-// fewestSteps of a segment: fewer could miss the shape of its drive.
-const fewestSteps = 8
-
-// caution is for what the leading order of the error leaves out.
-const caution = 1.5
-
-// widestAngle is how far the frequencies in the state may turn in a step. At 2 pi
-// they would be in resonance with the steps: the errors of all steps would add up,
-// and the estimate would not know. Some turn three times as fast as the mean.
-const widestAngle = 1.6
-
-// ramp takes steps from one time of the segment to another.
-func (r *run) ramp(ctx context.Context, from, to float64) error {
-	for at := from; at < to; {
-		left := to - at
-		r.pace = min(r.pace, r.Duration/fewestSteps)
-		if r.Every > 0 {
-			r.pace = min(r.pace, 2*r.Every)
-		}
-		steps := math.Max(1, math.Ceil(left/r.pace*(1-1e-9)))
-		h := left / steps
-		if h < 1e-13*r.Duration {
-			return fmt.Errorf("steps of %g s at %g s: the drive is not smooth, or the tolerance of %g too small", h, at, r.Tolerance)
-		}
-		taken, err := r.step(ctx, at, h)
-		if err != nil {
-			return err
-		}
-		if !taken {
-			r.count.rejected++
-			continue
-		}
-		r.count.steps++
-		if at += h; steps == 1 {
-			at = to
-		}
-		r.time = r.begin + at
-		r.report(at)
-		if r.Every > 0 && at < to && at-r.last >= r.Every*(1-1e-9) {
-			if err := r.couplingsAt(r.now, at); err != nil {
-				return err
-			}
-			if err := r.sample(ctx, r.psi, at); err != nil {
-				return err
-			}
-		}
-	}
-	return nil
 }
 
 // step tries one step and sets the pace of the next. It leaves psi alone if the
@@ -121,15 +55,21 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	if !s.proportional() {
 		return r.doubled(ctx, at, h, allowed)
 	}
-	limits := r.before.h > 0 // the state has settled into the first step
-	if err := r.first(ctx, h, limits); err != nil {
+	if err := r.hamiltonian.tune(ctx, s.first); err != nil {
 		return false, err
 	}
-	error, err := r.estimated(ctx, h)
+	if r.before.h > 0 { // the state has settled into the first step
+		s.limiter.choose(r.hamiltonian.energies, r.psi, h, s.limiter.trust*limitedShare*allowed)
+		r.hamiltonian.limit(s.limiter.low, s.limiter.high)
+	}
+	if err := r.build(ctx, h); err != nil {
+		return false, err
+	}
+	d, err := r.estimated(ctx, h)
 	if err != nil {
 		return false, err
 	}
-	excess := max(error.staying/(stayingShare*allowed), error.returning/(returningShare*r.Tolerance))
+	excess := max(d.staying/(stayingShare*allowed), d.returning/(returningShare*r.Tolerance))
 	if r.rest--; excess < easy && r.rest < 0 {
 		r.rest = easySteps - 1
 	}
@@ -141,26 +81,28 @@ func (r *run) step(ctx context.Context, at, h float64) (taken bool, err error) {
 	}
 	fine, err := r.exponentials(ctx, h)
 	if err == nil && !fine {
-		r.count.rejected++
-		if err = r.first(ctx, h, false); err == nil {
-			_, err = r.exponentials(ctx, h)
-		}
+		err = r.again(ctx, h)
 	}
-	r.account(h, error)
+	r.account(h, d)
 	return true, err
 }
 
-// first builds the Krylov space of the first exponential of a step, within limits
-// if they are asked for.
-func (r *run) first(ctx context.Context, h float64, limits bool) (err error) {
-	s := &r.tools
-	if err := r.hamiltonian.tune(ctx, s.first); err != nil {
+// again takes a step without limits.
+func (r *run) again(ctx context.Context, h float64) error {
+	r.count.rejected++
+	if err := r.hamiltonian.tune(ctx, r.tools.first); err != nil {
 		return err
 	}
-	if limits {
-		s.limiter.choose(r.hamiltonian.energies, r.psi, h, s.limiter.trust*limitedShare*r.Tolerance*h/r.Duration)
-		r.hamiltonian.limit(s.limiter.low, s.limiter.high)
+	if err := r.build(ctx, h); err != nil {
+		return err
 	}
+	_, err := r.exponentials(ctx, h)
+	return err
+}
+
+// build builds the Krylov space of the first exponential of a step.
+func (r *run) build(ctx context.Context, h float64) (err error) {
+	s := &r.tools
 	s.missed = r.hamiltonian.beyond(r.psi, h)
 	s.reach, s.bound, err = r.propagator.Build(ctx, r.psi, math.Pi*h, r.krylovTolerance(h), r.hamiltonian.product)
 	return err
@@ -208,78 +150,11 @@ func (r *run) exponentials(ctx context.Context, h float64) (fine bool, err error
 	return true, nil
 }
 
-// estimated returns the error of a step with some caution. After one whose error is
-// far below what is allowed, two are taken to have the same, by their lengths, if
-// the drive goes on as it did.
-func (r *run) estimated(ctx context.Context, h float64) (defect, error) {
-	change := r.tools.change() / h
-	if r.rest > 0 && change < 1.5*r.change {
-		ratio := h / r.before.h
-		return defect{returning: r.before.returning * math.Pow(ratio, 4), staying: r.before.staying * math.Pow(ratio, 5)}, nil
-	}
-	r.rest, r.change = 0, change
-	error, err := r.commutators(ctx, h)
-	return defect{returning: caution * error.returning, staying: caution * error.staying}, err
-}
-
-const (
-	easy      = 0.3 // share of what is allowed
-	easySteps = 3   // from one estimate to the next
-)
-
-// account adds the error of a step to the budget: what returns is there at the
-// begin of the segment and, for the time being, at the end of this step, and where
-// steps change their length, the change of it, which goes as h^4. What returns is
-// known about the begin of a step; where it grows, it is taken to go on growing.
-func (r *run) account(h float64, error defect) {
-	begin, end := error.returning, error.returning
-	if before := r.before; before.h > 0 {
-		same := before.returning * math.Pow(h/before.h, 4)
-		begin = math.Abs(same - before.returning)
-		if same > 0 {
-			end *= min(max(error.returning/same, 1), mostGrowth)
-		}
-	}
-	r.budget.Ordering += error.staying + begin + end - r.before.end
-	r.before.h, r.before.end, r.before.defect = h, end, error
-}
-
-// mostGrowth of what returns, from one step to the next.
-const mostGrowth = 4
-
 // exponential applies exp(-i tau H) of the couplings set last to the state.
 func (r *run) exponential(ctx context.Context, tau, tolerance float64) error {
 	report, err := r.propagator.Exp(ctx, r.psi, tau, tolerance, r.hamiltonian.product)
 	r.budget.Krylov += report.Bound
 	return err
-}
-
-// setPace chooses the length of the next step: what is compared with what is
-// allowed goes as h^4.
-func (r *run) setPace(h, excess float64) {
-	change := float64(mostChange)
-	if excess > 0 {
-		change = cautious * math.Pow(excess, -0.25)
-	}
-	r.pace = h * min(max(change, leastChange), mostChange)
-}
-
-// firstPace lets the frequencies in the state turn by their widest angle.
-func (r *run) firstPace(ctx context.Context) error {
-	r.pace = r.Duration
-	if err := r.couplingsAt(r.tools.first, 0); err != nil {
-		return err
-	}
-	if err := r.hamiltonian.tune(ctx, r.tools.first); err != nil {
-		return err
-	}
-	if _, _, err := r.propagator.Build(ctx, r.psi, 0, 1, r.hamiltonian.product); err != nil {
-		return err
-	}
-	if f := r.propagator.Frequency(); f > 0 {
-		r.pace = cautious * widestAngle / (2 * math.Pi * f)
-	}
-	return nil
 }
 
 // prepare reads the drive at the Gauss points, and around the middle for the
@@ -291,8 +166,8 @@ func (r *run) prepare(at, h float64) error {
 			return err
 		}
 	}
-	s.first.combine([]float64{2 * weight[0], 2 * weight[1]}, s.nodes[:])
-	s.second.combine([]float64{2 * weight[1], 2 * weight[0]}, s.nodes[:])
+	s.first.combine([]float64{2 * weights[0], 2 * weights[1]}, s.nodes[:])
+	s.second.combine([]float64{2 * weights[1], 2 * weights[0]}, s.nodes[:])
 	for k := range s.samples {
 		if err := r.couplingsAt(s.samples[k], at+h*float64(k)/4); err != nil {
 			return err

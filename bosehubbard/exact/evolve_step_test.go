@@ -49,13 +49,11 @@ func steps(t *testing.T, drive func(*bosehubbard.Model, float64), duration float
 		if _, _, err := e.propagator.Build(ctx, e.psi, math.Pi*h, 1e-12, e.hamiltonian.product); err != nil {
 			t.Fatal(err)
 		}
-		error, err := r.commutators(ctx, h)
+		d, err := r.estimated(ctx, h)
 		if err != nil {
 			t.Fatal(err)
 		}
-		error.staying *= caution
-		error.returning *= caution
-		r.account(h, error)
+		r.account(h, d)
 		if err := r.plain(ctx, at, h, 1e-12); err != nil {
 			t.Fatal(err)
 		}
