@@ -9,6 +9,8 @@ import (
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/test"
+
+	"hilltop/gui/session"
 )
 
 // bench is a window without a display. What its session posts waits in a queue
@@ -44,6 +46,7 @@ func newBench(t *testing.T, s setup) *bench {
 		Size: fyne.NewSize(s.width, s.height), Variant: s.variant, TextScale: s.scale,
 		Post: func(f func()) { b.queue <- f },
 	})
+	b.window.desk.ChooseEntropySize(6) // quick
 	t.Cleanup(func() {
 		go func() {
 			for range b.queue { // the session may still post while it ends
@@ -58,6 +61,11 @@ func newBench(t *testing.T, s setup) *bench {
 		b.window.did(nil)
 	}
 	b.settle()
+	b.until("S(E)", func() bool { // so that no State comes later by itself
+		now, shown := b.window.desk.State(), b.window.state
+		return !now.Jobs[session.EntropyJob].Running && !shown.Jobs[session.EntropyJob].Running &&
+			now.Entropy.Result == shown.Entropy.Result && b.window.easel.idle()
+	})
 	return b
 }
 

@@ -19,6 +19,7 @@ type CeilingPage struct {
 	rows     []*CriterionRow
 	terms    *Grid
 	stages   *Grid
+	entropy  *entropyPart
 	room     *roomPart
 	verdicts *mapPart
 
@@ -35,12 +36,13 @@ func newCeilingPage(tools pageTools) *CeilingPage {
 	p.picture = p.plot("Ceiling of the energy", p.pictureHeight)
 	p.terms = p.grid(p.explainTerm)
 	p.stages = p.grid(p.stageCell)
+	p.entropy = newEntropyPart(p)
 	p.room = newRoomPart(p)
 	p.verdicts = newMapPart(p)
 	room := p.detail("room of every knob", p.room.body)
 	chart := p.detail("map of the verdict over U and V", p.verdicts.body)
 	p.room.detail, p.verdicts.detail = room, chart
-	p.assemble(p.picture, p.criteria, room, chart, p.terms, p.stages)
+	p.assemble(p.picture, p.entropy.body, p.criteria, room, chart, p.terms, p.stages)
 	return p
 }
 
@@ -107,10 +109,8 @@ func (p *CeilingPage) Show(s session.State) {
 		p.fit()
 		return
 	}
-	report, axes := s.Report, session.LatticeAxes(s.Plan)
-	p.picture.Draw(ceilingKey{s.Judged}, func(*session.Artist) (subject, error) {
-		return &ceilingSubject{report: report, axes: axes}, nil
-	})
+	p.entropy.Set(s)
+	p.drawPicture(s)
 	p.room.Set(s)
 	p.verdicts.Set(s)
 	p.showCriteria(s)
@@ -120,7 +120,31 @@ func (p *CeilingPage) Show(s session.State) {
 }
 
 // ceilingKey is what the picture depends on.
-type ceilingKey struct{ judged uint64 }
+type ceilingKey struct {
+	judged  uint64
+	entropy *session.SmallSystem
+	stale   bool // of entropy
+}
+
+// drawPicture draws the bounds with S(E), or the ladder of levels.
+func (p *CeilingPage) drawPicture(s session.State) {
+	shown := p.entropy.subject(s)
+	if s.Plan == nil || s.Plan.Levels == nil {
+		key := ceilingKey{s.Judged, s.Entropy.Result, s.Entropy.Job.Stale}
+		p.picture.Draw(key, func(*session.Artist) (subject, error) { return shown, nil })
+		return
+	}
+	plan := s.Plan
+	p.picture.Draw(ceilingKey{judged: s.Judged}, func(a *session.Artist) (subject, error) {
+		levels := *shown
+		var err error
+		levels.ladder, levels.entropy, err = a.Ladder(plan, levels.report)
+		if levels.report.Levels != nil {
+			levels.state = &levels.report.Levels.EnergyHz
+		}
+		return &levels, err
+	})
+}
 
 // title says at which stage the energy is bounded and by what.
 func (p *CeilingPage) title(s session.State) string {
@@ -139,7 +163,11 @@ func (p *CeilingPage) title(s session.State) string {
 	if number == "unbounded" {
 		return begin + "unbounded from " + side + "."
 	}
-	return begin + "bounded from " + side + ": " + word + " " + number + " per atom."
+	of := " per atom."
+	if s.Report.Levels != nil {
+		of = " per body."
+	}
+	return begin + "bounded from " + side + ": " + word + " " + number + of
 }
 
 func (p *CeilingPage) showCriteria(s session.State) {

@@ -10,8 +10,11 @@ import (
 
 // ceilingSubject is the Ceiling picture, read term by term.
 type ceilingSubject struct {
-	report *session.Report
-	axes   []string // of the lattice
+	report  *session.Report
+	axes    []string             // of the lattice
+	entropy *figure.EntropyCurve // nil where there is none
+	ladder  *figure.Ladder       // of levels
+	state   *float64             // energy per atom, Hz; nil where it is not known
 }
 
 var _ subject = (*ceilingSubject)(nil)
@@ -38,7 +41,7 @@ func finite(b session.Bound) float64 {
 }
 
 func (c *ceilingSubject) picture(v view) figure.Picture {
-	o := figure.CeilingOptions{Unit: v.unit, ScaleTo: v.scale, HalfRange: v.half, LatticeAxes: c.axes}
+	o := figure.CeilingOptions{Unit: v.unit, ScaleTo: v.scale, HalfRange: v.half, LatticeAxes: c.axes, Entropy: c.entropy, Ladder: c.ladder, State: c.state}
 	if before, ok := v.pinned.(*ceilingSubject); ok {
 		o.Pinned = before.report
 	}
@@ -89,6 +92,8 @@ func (g *termGuide) places() [][]stop {
 	if s := g.geometry.Slope; s != nil {
 		list = append(list, g.hill(s)...)
 	}
+	list = append(list, g.rungs()...)
+	list = append(list, g.entropy()...)
 	size := &g.geometry.Size
 	for _, m := range size.Marks {
 		list = append(list, []stop{{figure.Point{X: m.X, Y: size.Y}, "Size of " + m.Name + ": " + figure.Number(m.Hz, 4) + " Hz"}})

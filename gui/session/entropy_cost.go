@@ -69,9 +69,9 @@ func (z *EntropySize) options() thermo.Options {
 	case d <= 20_000:
 		return thermo.Options{Moments: 128, Vectors: 32}
 	case d <= 200_000:
-		return thermo.Options{Moments: 128, Vectors: 6}
+		return thermo.Options{Moments: 96, Vectors: 4}
 	}
-	return thermo.Options{Moments: 96, Vectors: 3}
+	return thermo.Options{Moments: 96, Vectors: 2}
 }
 
 // hops counts the matrix elements that are applied; 0 for a full diagonalisation.
@@ -151,12 +151,14 @@ func timePace(ctx context.Context) (float64, error) {
 	return best, nil
 }
 
-// learn takes a measured pace; 0 says nothing.
+// learn takes a measured pace; 0 says nothing. The next State has it.
 func (s *Session) learn(pace float64) {
 	s.mu.Lock()
 	defer s.mu.Unlock()
 	if pace > 0 {
+		if s.small.pace > 0 { // one disturbed run does not count for much
+			pace = math.Sqrt(pace * s.small.pace)
+		}
 		s.small.pace = pace
-		s.changed(patient)
 	}
 }
