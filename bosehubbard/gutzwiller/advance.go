@@ -6,53 +6,6 @@ import (
 	"math"
 )
 
-// Report tells how a run went.
-type Report struct {
-	Steps, Rejected int
-	LargestError    float64 // estimate of the error of a site in one step, amplitude
-
-	// NormDrift and NumberDrift add up what the method let slip in all steps before
-	// it was set right: the largest |norm - 1| of a site, and |change of the number
-	// of atoms| / number. NumberDefect is what is left of the latter at the end.
-	NormDrift, NumberDrift, NumberDefect float64
-
-	TopWeight float64 // largest probability of a site in its last level, over the run
-	TopSite   int
-}
-
-// Add appends the report of the next run.
-func (r *Report) Add(next Report) {
-	r.Steps += next.Steps
-	r.Rejected += next.Rejected
-	r.LargestError = max(r.LargestError, next.LargestError)
-	r.NormDrift += next.NormDrift
-	r.NumberDrift += next.NumberDrift
-	r.NumberDefect += next.NumberDefect
-	if next.TopWeight > r.TopWeight {
-		r.TopWeight, r.TopSite = next.TopWeight, next.TopSite
-	}
-}
-
-// CutoffError says that too much of a site sits in its last level.
-type CutoffError struct {
-	Seconds       float64
-	Site, Levels  int
-	Weight, Limit float64
-}
-
-func (e *CutoffError) Error() string {
-	return fmt.Sprintf("gutzwiller: site %d has probability %.3g of %d atoms at %g s, limit %.3g: %d levels are too few",
-		e.Site, e.Weight, e.Levels-1, e.Seconds, e.Limit, e.Levels)
-}
-
-// StepError says that the step became too small to go on.
-type StepError struct{ Seconds, Step, Estimate, Tolerance float64 }
-
-func (e *StepError) Error() string {
-	return fmt.Sprintf("gutzwiller: step of %g s at %g s leaves an error of %.3g, want %.3g; does the drive jump inside the run?",
-		e.Step, e.Seconds, e.Estimate, e.Tolerance)
-}
-
 // Advance follows a state from one time to another, in seconds, under a drive that
 // is smooth in between. Cut the run at every jump or kink of the drive: one inside
 // costs many small steps if the step is seen to reach over it, and some accuracy if
@@ -72,10 +25,10 @@ func (e *Engine) Advance(ctx context.Context, state *State, drive Drive, from, t
 	if !(to >= from) || math.IsInf(from, 0) || math.IsInf(to, 0) {
 		return Report{}, fmt.Errorf("gutzwiller: run from %g s to %g s, want a duration of at least 0", from, to)
 	}
-	r := &run{Engine: e, ctx: ctx, drive: drive, from: from, to: to, now: from, crew: newCrew(e.options.Workers)}
+	r := &run{Engine: e, drive: drive, from: from, to: to, now: from, crew: newCrew(e.options.Workers)}
 	defer r.crew.stop()
-	e.state = state
-	defer func() { e.state = nil }()
+	e.state, e.ctx = state, ctx
+	defer func() { e.state, e.ctx = nil, nil }()
 	err := r.start()
 	for err == nil && r.now < r.to {
 		err = r.advance()
@@ -89,7 +42,6 @@ func (e *Engine) Advance(ctx context.Context, state *State, drive Drive, from, t
 // run is one call of Advance.
 type run struct {
 	*Engine
-	ctx           context.Context
 	drive         Drive
 	from, to, now float64
 	crew          *crew
@@ -223,16 +175,18 @@ func (r *run) attempt() (float64, error) {
 	return 2 * math.Pi * r.step * r.sampler.miss(r.large), nil
 }
 
-// stagesOf goes through the stages of the step.
+// stagesOf goes through the stages of the step. Their number is even, so that the
+// field of the new state is where that of the old one was.
 func (r *run) stagesOf() error {
 	r.setStages(r.step)
-	for r.current = range r.method.nodes {
-		if err := r.crew.run(r.ctx, len(r.tallies), r.jobs.pass); err != nil {
-			return err
-		}
-		if r.current < len(r.method.nodes)-1 {
-			r.phi[0], r.phi[1] = r.phi[1], r.phi[0]
-		}
+	for i := range r.reached {
+		r.reached[i].Store(0)
+	}
+	if err := r.crew.run(r.ctx, len(r.order.tasks), r.jobs.task); err != nil {
+		return err
+	}
+	if err := r.ctx.Err(); err != nil { // a task may have given up
+		return err
 	}
 	r.known = true
 	return nil
@@ -244,7 +198,6 @@ func (r *run) accept(total tally, estimate float64, last bool) error {
 		return &StepError{Seconds: r.now, Step: r.step, Estimate: math.Inf(1), Tolerance: r.options.Tolerance}
 	}
 	r.state.amplitudes, r.next = r.next, r.state.amplitudes
-	r.phi[0], r.phi[1] = r.phi[1], r.phi[0]
 	r.now += r.step
 	if last {
 		r.now = r.to
@@ -260,7 +213,7 @@ func (r *run) accept(total tally, estimate float64, last bool) error {
 }
 
 // numberSlack is the relative change of the number of atoms that is left alone.
-const numberSlack = 1e-11
+const numberSlack = 1e-12
 
 // keepNumber sets the number of atoms right when it has drifted.
 func (r *run) keepNumber(total tally, last bool) error {

@@ -64,19 +64,13 @@ func (c *crew) run(ctx context.Context, count int, job func(worker, block int)) 
 	return nil
 }
 
-// share is the number of blocks that a worker takes at once.
-const share = 4
-
 func (c *crew) work(worker int) {
 	for c.ctx.Err() == nil {
-		first := int(c.next.Add(share)) - share
-		if first >= c.count {
+		block := int(c.next.Add(1)) - 1
+		if block >= c.count {
 			return
 		}
-		last := min(first+share, c.count)
-		for block := first; block < last; block++ {
-			c.job(worker, block)
-		}
-		c.done.Add(int64(last - first))
+		c.job(worker, block)
+		c.done.Add(1)
 	}
 }

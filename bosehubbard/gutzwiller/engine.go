@@ -1,9 +1,11 @@
 package gutzwiller
 
 import (
+	"context"
 	"fmt"
 	"math"
 	"slices"
+	"sync/atomic"
 
 	"hilltop/bosehubbard/fock"
 	"hilltop/bosehubbard/num/blocks"
@@ -66,25 +68,27 @@ type Engine struct {
 
 	next   []float64   // the amplitudes of the next stage, then of the next step
 	k      [][]float64 // rates, by slot
-	phi    [2]wave     // <b> of the stage that is known, and of the one being built
+	phi    [2]wave     // <b> of the stages in turn; that of the state comes first
 	turn   wave        // exp(-i theta_V) of the stage that is known
 	shapes [][]float64 // padded
 	large  []float64   // the largest |value| of every shape
 
 	stages  []stage
-	final   []factor  // exp(-i theta_U n(n-1)/2) at the end of the step, by n
-	plain   []factor  // sqrt(n+1)
-	tallies []tally   // by block
-	scratch []scratch // by worker
+	final   []factor // exp(-i theta_U n(n-1)/2) at the end of the step, by n
+	plain   []factor // sqrt(n+1)
+	order   schedule
+	reached []atomic.Int32 // by block: stages done in this step
+	tallies []tally        // by block
+	scratch []scratch      // by worker
 
 	// What the pass that runs now works on.
-	state   *State
-	step    float64 // s
-	current int     // stage
-	known   bool    // the rate of the first stage is left from a rejected step
-	turned  float64 // share of the interaction that the frame turns with
-	jobs    struct{ begin, pass, correct func(worker, block int) }
-	scale   float64 // of the correction of the number of atoms
+	state  *State
+	step   float64 // s
+	ctx    context.Context
+	known  bool    // the rate of the first stage is left from a rejected step
+	turned float64 // share of the interaction that the frame turns with
+	jobs   struct{ begin, task, correct func(worker, block int) }
+	scale  float64 // of the correction of the number of atoms
 
 	proposed float64 // step for the next run, s; 0: none yet
 }
@@ -105,15 +109,6 @@ func newWave(padded int) wave {
 // block returns the lanes of one block.
 func (w wave) block(b int) (re, im *lane) {
 	return (*lane)(w.re[b*width:]), (*lane)(w.im[b*width:])
-}
-
-// stage holds the terms at one stage of a step.
-type stage struct {
-	tunnelling [3]float64 // rad/s
-	factors    []factor
-	left       []float64 // energy of each level that does not turn with the frame, rad/s
-	angles     []float64 // integral of each weight since the start of the step, rad
-	weights    []float64 // rad/s; the plain method only
 }
 
 // scratch is what one worker needs for a block.
@@ -149,6 +144,8 @@ func NewEngine(s *System, opt Options) (*Engine, error) {
 	}
 	e.phi = [2]wave{newWave(s.Grid.padded), newWave(s.Grid.padded)}
 	e.turn = newWave(s.Grid.padded)
+	e.order = newSchedule(s.Grid, len(e.method.nodes))
+	e.reached = make([]atomic.Int32, s.Grid.padded/width)
 	e.tallies = make([]tally, s.Grid.padded/width)
 	e.scratch = make([]scratch, opt.Workers)
 	for i := range e.scratch {
@@ -156,7 +153,7 @@ func NewEngine(s *System, opt Options) (*Engine, error) {
 	}
 	e.prepareMethod()
 	e.prepareShapes()
-	e.jobs.begin, e.jobs.pass, e.jobs.correct = e.begin, e.pass, e.correct
+	e.jobs.begin, e.jobs.task, e.jobs.correct = e.begin, e.task, e.correct
 	return e, nil
 }
 
@@ -194,72 +191,5 @@ func (e *Engine) prepareShapes() {
 			largest = max(largest, math.Abs(v))
 		}
 		e.large = append(e.large, largest)
-	}
-}
-
-// setStages turns what the sampler read into the terms of the stages. The last
-// entry stands for the end of the step.
-func (e *Engine) setStages(step float64) {
-	const turns = 2 * math.Pi
-	s := e.sampler
-	if !e.known { // or the rate that is left would be of another frame
-		e.turned = e.share()
-	}
-	for i := range e.stages {
-		st := &e.stages[i]
-		theta := e.turned * turns * step * s.interaction(&s.integral[i])
-		for k := range st.angles {
-			st.angles[k] = turns * step * s.weight(&s.integral[i], k)
-		}
-		for n := range st.factors {
-			sin, cos := math.Sincos(theta * float64(n))
-			root := math.Sqrt(float64(n + 1))
-			st.factors[n] = factor{root * cos, -root * sin}
-		}
-		if i == len(e.stages)-1 {
-			e.setFinal(theta)
-			break
-		}
-		for axis := range st.tunnelling {
-			st.tunnelling[axis] = turns * s.tunnelling(&s.values[i], axis)
-		}
-		left := (1 - e.turned) * turns * s.interaction(&s.values[i])
-		for n := range st.left {
-			st.left[n] = left * float64(n*(n-1)/2)
-		}
-		for k := range st.weights {
-			st.weights[k] = turns * s.weight(&s.values[i], k)
-		}
-	}
-}
-
-// share is the share of the interaction that the frame turns with: all of it without
-// tunnelling, so that nothing is left to follow; half where sites are coherent and
-// their levels turn together, which makes steps up to a quarter longer for the same
-// error. What is left must not limit the step by the top level alone.
-func (e *Engine) share() float64 {
-	if e.options.PlainStep > 0 {
-		return 0
-	}
-	var tunnelling, interaction float64
-	for i := range e.sampler.terms {
-		t := &e.sampler.terms[i]
-		sum := 0.0
-		for _, j := range t.Tunnelling[:e.system.Grid.Axes] {
-			sum += 2 * math.Abs(j)
-		}
-		tunnelling, interaction = max(tunnelling, sum), max(interaction, math.Abs(t.Interaction))
-	}
-	top := float64((e.system.Levels - 1) * (e.system.Levels - 2) / 2)
-	if reach := 5 * tunnelling; reach < 0.5*interaction*top {
-		return 1 - reach/(interaction*top)
-	}
-	return 0.5
-}
-
-func (e *Engine) setFinal(theta float64) {
-	for n := range e.final {
-		sin, cos := math.Sincos(theta * float64(n*(n-1)/2))
-		e.final[n] = factor{cos, -sin}
 	}
 }

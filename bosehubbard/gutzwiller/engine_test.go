@@ -207,7 +207,7 @@ func TestStops(t *testing.T) {
 	if testing.Short() {
 		t.Skip("needs a second")
 	}
-	g := mustGrid(t, []int{100, 100, 20}, []bool{false, false, false})
+	g := mustGrid(t, []int{60, 60, 20}, []bool{false, false, false})
 	s := mustSystem(t, g, 6)
 	state := scramble(t, s, 1)
 	e := mustEngine(t, s, Options{TopLimit: 1})

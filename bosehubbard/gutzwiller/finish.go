@@ -2,8 +2,8 @@ package gutzwiller
 
 import "math"
 
-// finish ends a step for a block: error, new amplitudes in the resting frame, norm,
-// sums, and the field for the next step.
+// finish ends a step for a block: error, new amplitudes in the resting frame, norm
+// and sums.
 func (e *Engine) finish(w *scratch, block int, y, next []float64) {
 	from := block * len(next)
 	t := &e.tallies[block]
@@ -17,8 +17,6 @@ func (e *Engine) finish(w *scratch, block int, y, next []float64) {
 		t.norm = setNorm(&w.a, next)
 	}
 	e.count(block, next)
-	re, im := e.phi[1].block(block)
-	field(re, im, next, e.plain)
 }
 
 // estimate returns the largest error of a site of a block: that of order 5, damped

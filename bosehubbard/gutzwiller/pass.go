@@ -20,31 +20,33 @@ func (e *Engine) begin(_, block int) {
 	e.count(block, y)
 }
 
-// pass does one stage of a step for a block: the rate from the field that all
-// blocks left, then the amplitudes and the field of the next stage.
-func (e *Engine) pass(worker, block int) {
+// pass does one stage of a step for a block: the rate from the field that the stage
+// before left, then the amplitudes and the field of the next one. The fields of
+// stages lie in two lists in turn.
+func (e *Engine) pass(worker, stage, block int) {
 	size := 2 * width * e.system.Levels
 	from, to := block*size, (block+1)*size
 	y, next := e.state.amplitudes[from:to], e.next[from:to]
-	w, st := &e.scratch[worker], &e.stages[e.current]
-	if e.current > 0 || !e.known {
+	w := &e.scratch[worker]
+	if stage > 0 || !e.known {
 		g := next
-		if e.current == 0 {
+		if stage == 0 {
 			g = y
 		}
-		e.rate(w, st, block, e.k[e.method.slots[e.current]][from:to], g)
+		e.rate(w, stage, block, e.k[e.method.slots[stage]][from:to], g)
 	}
-	if e.current == len(e.method.nodes)-1 {
+	stage++
+	re, im := e.phi[stage%2].block(block)
+	if stage == len(e.method.nodes) {
 		e.finish(w, block, y, next)
+		field(re, im, next, e.plain)
 		return
 	}
-	e.sum(w, next, y, e.rows[e.current], from)
-	st = &e.stages[e.current+1]
-	re, im := e.phi[1].block(block)
-	field(re, im, next, st.factors)
+	e.sum(w, next, y, e.rows[stage-1], from)
+	field(re, im, next, e.stages[stage].factors)
 	if e.turning() {
 		tRe, tIm := e.turn.block(block)
-		e.setTurn(tRe, tIm, st.angles, block)
+		e.setTurn(tRe, tIm, e.stages[stage].angles, block)
 		multiply(re, im, tRe, tIm)
 	}
 }
@@ -52,10 +54,11 @@ func (e *Engine) pass(worker, block int) {
 // turning says whether the potential is taken out of the amplitudes.
 func (e *Engine) turning() bool { return len(e.shapes) > 0 && e.options.PlainStep == 0 }
 
-// rate sets k to the rate of g in the frame of stage st.
-func (e *Engine) rate(w *scratch, st *stage, block int, k, g []float64) {
-	e.gather(w, st, block)
-	if e.turning() && e.current > 0 {
+// rate sets k to the rate of g at a stage.
+func (e *Engine) rate(w *scratch, stage, block int, k, g []float64) {
+	st := &e.stages[stage]
+	e.gather(w, st, &e.phi[stage%2], block)
+	if e.turning() && stage > 0 {
 		tRe, tIm := e.turn.block(block)
 		multiplyConjugate(&w.psiRe, &w.psiIm, tRe, tIm)
 	}
@@ -67,19 +70,19 @@ func (e *Engine) rate(w *scratch, st *stage, block int, k, g []float64) {
 }
 
 // gather writes J Phi of a block to psi.
-func (e *Engine) gather(w *scratch, st *stage, block int) {
+func (e *Engine) gather(w *scratch, st *stage, phi *wave, block int) {
 	grid := e.system.Grid
 	for d := range grid.sides {
 		w.scaled[d] = st.tunnelling[d/2]
 	}
 	all := w.scaled[:len(grid.sides)]
 	for d := range grid.sides {
-		w.picked[d] = grid.sides[d].values(&w.sides[d], e.phi[0].re, block)
+		w.picked[d] = grid.sides[d].values(&w.sides[d], phi.re, block)
 	}
 	w.psiRe = lane{}
 	combine(w.psiRe[:], w.psiRe[:], all, w.picked[:])
 	for d := range grid.sides {
-		w.picked[d] = grid.sides[d].values(&w.sides[d], e.phi[0].im, block)
+		w.picked[d] = grid.sides[d].values(&w.sides[d], phi.im, block)
 	}
 	w.psiIm = lane{}
 	combine(w.psiIm[:], w.psiIm[:], all, w.picked[:])

@@ -43,43 +43,48 @@ func Thermal(ctx context.Context, s *System, terms Terms, heat Heat) (*State, er
 	if err := s.check(terms); err != nil {
 		return nil, err
 	}
-	ceiling := terms.Interaction < 0
-	signs, err := s.Grid.order(terms, ceiling)
+	signs, err := s.Grid.order(terms, terms.Interaction < 0)
 	if err != nil {
 		return nil, err
 	}
 	if heat.Draw != Phases && heat.Draw != Levels {
 		return nil, fmt.Errorf("gutzwiller: draw %d, want Phases or Levels", heat.Draw)
 	}
-	v := s.potential(terms)
-	sites := make([]int, len(v))
-	for i := range sites {
-		sites[i] = i
+	site := Site{Interaction: terms.Interaction, Temperature: heat.Temperature}
+	for a := range s.Grid.Axes {
+		site.Coupling += 2 * math.Abs(terms.Tunnelling[a])
 	}
-	sort.SliceStable(sites, func(i, j int) bool { return v[sites[i]] < v[sites[j]] })
+	v := s.potential(terms)
 	state := NewState(s)
 	state.Seeds = []uint64{heat.Seed}
 	solver, f := NewSolver(), make([]complex128, s.Levels)
-	coupling := 0.0
-	for a := range s.Grid.Axes {
-		coupling += 2 * math.Abs(terms.Tunnelling[a])
-	}
-	for i, site := range sites {
-		if i == 0 || v[site] != v[sites[i-1]] {
+	last := math.NaN()
+	for _, at := range byValue(v) {
+		if v[at] != last {
 			if err := ctx.Err(); err != nil {
 				return nil, err
 			}
-			local := Site{heat.ChemicalPotential - v[site], terms.Interaction, coupling, heat.Temperature}
-			if err := solver.solveFor(local, s.Levels); err != nil {
-				return nil, fmt.Errorf("%w (site %d)", err, site)
+			last, site.ChemicalPotential = v[at], heat.ChemicalPotential-v[at]
+			if err := solver.solveFor(site, s.Levels); err != nil {
+				return nil, fmt.Errorf("%w (site %d)", err, at)
 			}
 		}
-		solver.draw(f, signs[site], heat.Draw, rand.New(rand.NewPCG(heat.Seed, thermalStream+uint64(site))))
-		if err := state.SetSite(site, f); err != nil {
+		solver.draw(f, signs[at], heat.Draw, rand.New(rand.NewPCG(heat.Seed, thermalStream+uint64(at))))
+		if err := state.SetSite(at, f); err != nil {
 			return nil, err
 		}
 	}
 	return state, nil
+}
+
+// byValue returns the indices of v in the order of its values.
+func byValue(v []float64) []int {
+	list := make([]int, len(v))
+	for i := range list {
+		list[i] = i
+	}
+	sort.SliceStable(list, func(i, j int) bool { return v[list[i]] < v[list[j]] })
+	return list
 }
 
 // solveFor is Solve with a look at what is above the levels of a system.
@@ -101,26 +106,38 @@ func (w *Solver) solveFor(site Site, levels int) error {
 // draw writes a state of the mixture to f; sign is that of phi.
 func (w *Solver) draw(f []complex128, sign float64, draw Draw, random *rand.Rand) {
 	clear(f)
-	left := random.Float64()
-	for k, p := range w.weights {
-		c := complex(math.Sqrt(p), 0)
-		if draw == Phases {
+	if draw == Levels {
+		w.addState(f, w.pick(random.Float64()), 1)
+	} else {
+		for k, p := range w.weights {
 			sin, cos := math.Sincos(2 * math.Pi * random.Float64())
-			c *= complex(cos, sin)
-		} else {
-			picked := left >= 0 && left < p
-			left -= p
-			if !picked {
-				continue
-			}
-			c = 1
-		}
-		for n := range min(len(f), w.levels) {
-			f[n] += c * complex(w.vectors[n*w.levels+k], 0)
+			w.addState(f, k, complex(math.Sqrt(p)*cos, math.Sqrt(p)*sin))
 		}
 	}
 	for n := 1; n < len(f); n += 2 {
 		f[n] *= complex(sign, 0)
+	}
+}
+
+// pick returns the state at which the sum of the weights passes a number in [0, 1).
+func (w *Solver) pick(sum float64) int {
+	last := 0
+	for k, p := range w.weights {
+		if p > 0 {
+			last = k
+		}
+		if sum < p {
+			return k
+		}
+		sum -= p
+	}
+	return last // the weights add up to 1 but for rounding
+}
+
+// addState adds c times the eigenstate k to f.
+func (w *Solver) addState(f []complex128, k int, c complex128) {
+	for n := range min(len(f), w.levels) {
+		f[n] += c * complex(w.vectors[n*w.levels+k], 0)
 	}
 }
 
