@@ -27,7 +27,7 @@ func (w *Window) ask(title, text string, answers ...answer) {
 func (w *Window) tell(title, text string) { w.dialog(title, text, []answer{{"Close", nothing}}) }
 
 func (w *Window) dialog(title, text string, answers []answer) {
-	column := NewColumn(space8, space8)
+	column := NewColumn(space8, 0)
 	for _, paragraph := range strings.Split(text, "\n") {
 		column.Objects = append(column.Objects, NewProse(paragraph, textBody, 0))
 	}

@@ -49,6 +49,7 @@ func (b *bench) margin() *Number {
 // at a field, at a choice and at a number.
 func TestMenuOfTheValue(t *testing.T) {
 	b := newBench(t, setup{})
+	b.window.reveal("/stages/3/shape")
 	choice := b.window.column.choices["/stages/3/shape"]
 	row := b.window.column.rows[depthX]
 	for name, open := range map[string]func(){
@@ -102,6 +103,7 @@ func TestDoubleClickResets(t *testing.T) {
 	if b.field(depthX).Text() != "6" || b.field(depthX).Refused {
 		t.Errorf("a double click leaves %q", b.field(depthX).Text())
 	}
+	b.window.reveal("/stages/3/shape")
 	shape := b.window.column.choices["/stages/3/shape"]
 	b.press(shape.words, fyne.KeyEnd)
 	b.settle()

@@ -191,8 +191,13 @@ func (k *KnobColumn) CreateRenderer() fyne.WidgetRenderer {
 
 func (k *KnobColumn) least() fyne.Size { return fyne.NewSize(k.Metrics.Knobs, 0) }
 
+// paint keeps the field with the focus in sight where the column gets lower.
 func (k *KnobColumn) paint(size fyne.Size) []fyne.CanvasObject {
+	lower := size.Height < k.scroller.Size().Height
 	k.scroller.Resize(fyne.NewSize(size.Width-lineThin, size.Height))
+	if row := k.rows[k.atHand]; lower && row != nil && row.field.Focused() {
+		k.scroller.Reveal(row)
+	}
 	return []fyne.CanvasObject{
 		filled(fyne.Position{}, size, ColorPanel),
 		k.scroller,

@@ -54,6 +54,7 @@ func (k *KnobColumn) did(err error) {
 func (k *KnobColumn) typed(row *KnobRow, id, text string) {
 	row.SetNote(k.desk.Preview(id, text).Text)
 	k.scroller.Fit()
+	k.scroller.Reveal(row)
 }
 
 // focused tells that a row has got the focus, or has lost it.

@@ -63,6 +63,8 @@ func keyName(key fyne.KeyName) string {
 		return "Page Down"
 	case fyne.KeyReturn:
 		return "Enter"
+	case fyne.KeyBackspace:
+		return "Backspace"
 	}
 	return string(key)
 }

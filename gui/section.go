@@ -19,14 +19,11 @@ type section struct {
 	ids     []string // of the actions of the buttons
 }
 
-// openAtFirst is the group that is open from the start.
-const openAtFirst = "Stage"
-
 func (k *KnobColumn) section(name string) *section {
 	if c := k.sections[name]; c != nil {
 		return c
 	}
-	c := &section{open: name == openAtFirst, flow: NewFlow(space8)}
+	c := &section{flow: NewFlow(space8)}
 	c.head = NewGroupHead(func() { k.toggle(c) }, func() { k.scroller.Reveal(c.head) }, k.On.Key)
 	k.sections[name] = c
 	return c

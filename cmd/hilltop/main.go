@@ -44,21 +44,35 @@ func show(window *gui.Window) (err error) {
 
 // run opens the window and returns the exit code once it is closed.
 func run(args []string, stderr io.Writer) int {
+	opt, code := options(args, stderr)
+	if code >= 0 {
+		return code
+	}
+	log.SetOutput(&quiet{to: stderr})
+	program := app.NewWithID(appID)
+	return serve(program, gui.New(program, opt), stderr)
+}
+
+// options reads the command line and finds the folder for recovery files. The code
+// is the one to exit with, or -1 to go on.
+func options(args []string, stderr io.Writer) (opt gui.Options, code int) {
 	opt, err := parse(args, stderr)
 	switch {
 	case errors.Is(err, flag.ErrHelp):
-		return 0
+		return opt, 0
 	case err != nil:
 		fmt.Fprintln(stderr, "hilltop:", err)
-		return 2
+		return opt, 2
 	}
 	if opt.Folder, err = session.DefaultFolder(); err != nil {
 		fmt.Fprintln(stderr, "hilltop: no folder for recovery files, going on without:", err)
 		opt.Folder = ""
 	}
-	log.SetOutput(&quiet{to: stderr})
-	program := app.NewWithID(appID)
-	window := gui.New(program, opt)
+	return opt, -1
+}
+
+// serve runs a window until it is closed and returns the exit code.
+func serve(program fyne.App, window *gui.Window, stderr io.Writer) int {
 	stopped := quitOnSignal(program)
 	if err := show(window); err != nil {
 		fmt.Fprintln(stderr, "hilltop:", err)

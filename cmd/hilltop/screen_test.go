@@ -72,6 +72,9 @@ var program = sync.OnceValues(func() (string, error) {
 })
 
 func TestMain(m *testing.M) {
+	if os.Getenv(inside) == "1" {
+		os.Exit(runInside(os.Args[1:]))
+	}
 	code := m.Run()
 	if os.Getenv("HILLTOP_WINDOW") == "1" {
 		if path, err := program(); err == nil {
@@ -95,15 +98,29 @@ func startIn(t *testing.T, folder, document string, args ...string) *screen {
 	if err != nil {
 		t.Fatalf("building the program: %v\n%s", err, path)
 	}
-	s := &screen{T: t, ended: make(chan error, 1)}
-	s.command = exec.Command(path, args...)
-	s.command.Env = append(os.Environ(), "LANG=C.UTF-8", "XDG_STATE_HOME="+folder, "XDG_CONFIG_HOME="+folder)
-	s.command.Stdout, s.command.Stderr = &s.log, &s.log
+	s := &screen{T: t, command: exec.Command(path, args...)}
+	s.command.Env = environment(folder)
+	s.command.Stdout = &s.log
+	s.begin(document)
+	return s
+}
+
+// environment is that of the program, with its settings and recovery files in a
+// folder.
+func environment(folder string) []string {
+	return append(os.Environ(), "LANG=C.UTF-8", "XDG_STATE_HOME="+folder, "XDG_CONFIG_HOME="+folder)
+}
+
+// begin starts the command and waits for the window of a document.
+func (s *screen) begin(document string) {
+	s.Helper()
+	s.command.Stderr = &s.log
+	s.ended = make(chan error, 1)
 	if err := s.command.Start(); err != nil {
-		t.Fatal(err)
+		s.Fatal(err)
 	}
 	go func() { s.ended <- s.command.Wait() }()
-	t.Cleanup(s.stop)
+	s.Cleanup(s.stop)
 	s.waitFor("the window of "+document, func() bool {
 		s.window = lastLine(s.output("xdotool", "search", "--onlyvisible", "--name", "^"+document+".* - Hilltop$"))
 		return s.window != ""
@@ -112,7 +129,6 @@ func startIn(t *testing.T, folder, document string, args ...string) *screen {
 		s.output("xdotool", "windowfocus", s.window)
 		return strings.TrimSpace(s.output("xdotool", "getwindowfocus")) == s.window
 	})
-	return s
 }
 
 // stop ends a program that still runs.
@@ -187,6 +203,12 @@ func (s *screen) waitForTitle(title string) {
 func (s *screen) quit() {
 	s.Helper()
 	s.keys("ctrl+q")
+	s.awaitEnd()
+}
+
+// awaitEnd waits for the program to end well.
+func (s *screen) awaitEnd() {
+	s.Helper()
 	select {
 	case err := <-s.ended:
 		if err != nil {
