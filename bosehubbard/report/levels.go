@@ -12,13 +12,13 @@ import (
 
 // Levels is the equilibrium of many independent bodies with a few levels each.
 type Levels struct {
-	EnergyHz    float64  `json:"energy_hz_per_body"`
-	BetaPerHz   *float64 `json:"beta_per_hz,omitempty"` // absent at an end, where it is infinite
-	Temperature Kelvin   `json:"temperature_k"`
-	EntropyKB   float64  `json:"entropy_per_body_kb"`
-	WindowMS    float64  `json:"window_ms"`
-	TimeRatio   float64  `json:"time_ratio"` // outer over inner time
-	Shares      []float64 `json:"shares"` // of the bodies in each level
+	EnergyHz    float64   `json:"energy_hz_per_body"`
+	BetaPerHz   *float64  `json:"beta_per_hz,omitempty"` // absent at an end, where it is infinite
+	Temperature Kelvin    `json:"temperature_k"`
+	EntropyKB   float64   `json:"entropy_per_body_kb"`
+	WindowMS    float64   `json:"window_ms"`
+	TimeRatio   float64   `json:"time_ratio"` // outer over inner time
+	Shares      []float64 `json:"shares"`     // of the bodies in each level
 }
 
 // Kelvin is a temperature; null in JSON where it is infinite, at beta = 0.
