@@ -17,7 +17,7 @@ func ramp(shapes int) Drive {
 		at.Tunnelling = [3]float64{math.Exp(-3 * seconds), 0.5 + seconds, 0.3}
 		at.Interaction = 8 - 30*seconds + 10*math.Sin(7*seconds)
 		for k := range at.Weights {
-			at.Weights[k] = (0.02 - 0.1*seconds*seconds) / float64(k+1)
+			at.Weights[k] = (0.3 - seconds*seconds) / float64(k+1)
 		}
 	}
 }
@@ -56,6 +56,10 @@ func TestToleranceIsMet(t *testing.T) {
 		}
 		if report.LargestError > tolerance || report.NumberDefect > 1e-10 {
 			t.Errorf("tolerance %g: %+v", tolerance, report)
+		}
+		// A rejected step must leave nothing wrong behind that the next one meets again.
+		if report.Rejected < 0 || report.Rejected > report.Steps/3 {
+			t.Errorf("tolerance %g: %d steps and %d rejected", tolerance, report.Steps, report.Rejected)
 		}
 		last = d
 	}

@@ -64,8 +64,11 @@ func TestGroundOfAtoms(t *testing.T) {
 			if err != nil {
 				t.Fatal(err)
 			}
-			near(t, "atoms", m.Atoms, atoms, 1e-9*atoms)
+			near(t, "atoms", m.Atoms, atoms, 1e-12*atoms)
 			return got, m.Energy() * m.Atoms
+		}
+		for _, atoms := range []float64{3.3, 41, 77.7} {
+			energy(atoms)
 		}
 		middle, _ := energy(50)
 		_, low := energy(49.9)
@@ -129,9 +132,17 @@ func TestGroundWithoutTunnelling(t *testing.T) {
 	filling := make([]float64, 9)
 	got.State.Filling(filling)
 	// n is the smallest whole number with U n > mu - V: V = 16, 9, 4, 1, 0, ...
-	for site, want := range []float64{0, 1, 1, 2, 2, 2, 1, 1, 0} {
+	cake := []float64{0, 1, 1, 2, 2, 2, 1, 1, 0}
+	for site, want := range cake {
 		near(t, "filling", filling[site], want, 1e-12)
 	}
+	terms.Tunnelling[0] = 1e-4 // the search has to empty and fill insulating sites
+	got = mustGround(t, s, terms, GroundOptions{Atoms: 10})
+	got.State.Filling(filling)
+	for site, want := range cake {
+		near(t, "filling with 10 atoms", filling[site], want, 1e-6)
+	}
+	terms.Tunnelling[0] = 0
 	if _, err := Ground(context.Background(), s, terms, GroundOptions{Atoms: 4.5}); err == nil || !strings.Contains(err.Error(), "no chemical potential") {
 		t.Errorf("4.5 atoms without tunnelling: got %v, want an error", err)
 	}

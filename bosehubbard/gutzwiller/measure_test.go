@@ -47,6 +47,10 @@ func TestMeasure(t *testing.T) {
 				want.Interaction += terms.Interaction / 2 * w * x * (x - 1)
 				want.Potential += (-0.05*at[0]*at[0] + 0.4*at[0]) * w * x
 				want.SiteShares[min(n, 3)] += w / float64(g.Sites)
+				for a, x := range at {
+					want.Middle[a] += w * float64(n) * x
+					want.Radius += w * float64(n) * x * x
+				}
 			}
 		}
 		for _, b := range box.Bonds {
@@ -57,6 +61,12 @@ func TestMeasure(t *testing.T) {
 		near(t, "interaction", got.Interaction, want.Interaction/want.Atoms, 1e-12)
 		near(t, "potential", got.Potential, want.Potential/want.Atoms, 1e-10)
 		near(t, "energy", got.Energy(), (want.Kinetic+want.Interaction+want.Potential)/want.Atoms, 1e-10)
+		square := want.Radius / want.Atoms
+		for a := range 3 {
+			near(t, "middle", got.Middle[a], want.Middle[a]/want.Atoms, 1e-12)
+			square -= got.Middle[a] * got.Middle[a]
+		}
+		near(t, "square of the radius", got.Radius*got.Radius, square, 1e-9)
 		near(t, "square", got.Square, want.Square, 1e-12)
 		near(t, "coherent", got.Coherent, want.Coherent/want.Atoms, 1e-12)
 		near(t, "centre", got.Centre, real(plain*cmplx.Conj(plain))/want.Atoms, 1e-10)
