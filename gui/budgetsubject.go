@@ -63,3 +63,8 @@ func (g *rowGuide) read(p figure.Point) (reading, bool) {
 	_, y := g.Data(p)
 	return g.at(0, int(-y))
 }
+
+// step goes on row by row: right and down are the next one.
+func (g *rowGuide) step(from reading, right, up int) reading {
+	return g.stopGuide.step(from, 0, up-right)
+}

@@ -92,6 +92,31 @@ func TestPointerReadsTheNearestCurve(t *testing.T) {
 	}
 }
 
+// The budget is read row by row, from the pointer's row on.
+func TestBudgetIsReadRowByRow(t *testing.T) {
+	b := newBench(t, setup{})
+	b.turnTo("Bench")
+	p := b.window.pages[b.window.page].(*BenchPage).budget
+	guide := p.guide().(*rowGuide)
+	at := guide.Pixel(0, -1.5)
+	p.sheet.MouseMoved(&desktop.MouseEvent{PointEvent: fyne.PointEvent{Position: fyne.NewPos(float32(at.X), float32(at.Y))}})
+	if want := "cross along x: +18.8"; !strings.HasPrefix(p.readout.Text, want) {
+		t.Errorf("the second row reads %q, want %q", p.readout.Text, want)
+	}
+	p.sheet.MouseOut()
+	if p.sheet.reads {
+		t.Error("the crosshair stays after the pointer has left")
+	}
+	b.canvas().Focus(p.sheet)
+	b.press(p.sheet, fyne.KeyRight)
+	for _, want := range []string{"sheet along x", "cross along x", "lattice y along x", "lattice z along x", "Net trap along x: −34.6"} {
+		if !strings.HasPrefix(p.readout.Text, want) {
+			t.Errorf("%q, want %q", p.readout.Text, want)
+		}
+		b.press(p.sheet, fyne.KeyDown)
+	}
+}
+
 func TestZoomPanAndWhole(t *testing.T) {
 	b, p := latticeBench(t)
 	whole := chartOf(t, p).Shown()

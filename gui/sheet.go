@@ -23,6 +23,7 @@ type pictureSheet struct {
 
 	reading reading
 	reads   bool // there is a reading
+	pointed bool // it is that of the pointer
 	across  *canvas.Line
 	down    *canvas.Line
 	dot     *canvas.Circle

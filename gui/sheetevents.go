@@ -32,12 +32,13 @@ func (s *pictureSheet) MouseIn(e *desktop.MouseEvent) { s.MouseMoved(e) }
 func (s *pictureSheet) MouseMoved(e *desktop.MouseEvent) {
 	if s.drawn != nil {
 		s.read(s.drawn.guide.read(point(e.Position)))
+		s.pointed = true
 	}
 }
 
 // MouseOut drops what the pointer read; what the keys lead to stays.
 func (s *pictureSheet) MouseOut() {
-	if s.reading.curve < 0 {
+	if s.pointed {
 		s.read(reading{}, false)
 	}
 }

@@ -11,7 +11,7 @@ import (
 
 // read shows a reading, or none.
 func (s *pictureSheet) read(r reading, ok bool) {
-	s.reading, s.reads = r, ok
+	s.reading, s.reads, s.pointed = r, ok, false
 	s.placeMarks()
 	s.plot.readOut()
 }

@@ -137,8 +137,8 @@ func (b *Budget) draw(p *pen, a Area, lines []budgetRow) {
 	}
 	for _, net := range [...]bool{true, false} {
 		for i, line := range lines {
-			if line.isNet == net {
-				b.name(&place, line, zero, a.Pixel(line.part.Frequency, -float64(i)-0.5))
+			if end := a.Pixel(line.part.Frequency, -float64(i)-0.5); line.isNet == net && end.Y >= a.Y0 && end.Y <= a.Y1 {
+				b.name(&place, line, zero, end)
 			}
 		}
 	}
