@@ -144,7 +144,7 @@ func NewEngine(s *System, opt Options) (*Engine, error) {
 	}
 	e.phi = [2]wave{newWave(s.Grid.padded), newWave(s.Grid.padded)}
 	e.turn = newWave(s.Grid.padded)
-	e.order = newSchedule(s.Grid, len(e.method.nodes))
+	e.order = newSchedule(s.Grid, len(e.method.nodes), (slots+2)*2*width*8*s.Levels)
 	e.reached = make([]atomic.Int32, s.Grid.padded/width)
 	e.tallies = make([]tally, s.Grid.padded/width)
 	e.scratch = make([]scratch, opt.Workers)

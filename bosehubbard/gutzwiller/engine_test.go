@@ -184,7 +184,7 @@ func TestStepsAllocateNothing(t *testing.T) {
 			})
 		}
 		few, many := count(0.1), count(2)
-		if many > few+1 {
+		if many > few+3 { // the first wait of a goroutine makes a timer
 			t.Errorf("%d workers: %g allocations in a short run, %g in one of many steps", workers, few, many)
 		}
 	}

@@ -8,33 +8,42 @@ import (
 // task is one stage of a step for one block.
 type task struct{ stage, block int }
 
-// schedule is the order of the tasks of a step. A stage follows the one before it by a
-// lag of some blocks, so that a block is still in the cache when its next stage
-// comes: what is not in the cache costs more than the arithmetic. With wrap-around
-// along the slowest axis the lag is the whole grid, one stage after the other.
+// schedule is the order of the tasks of a step. Stages come in groups; within a group
+// a stage follows the one before it by a lag of some blocks, so that a block is still
+// in the cache when its next stage comes: what is not in the cache costs more than
+// the arithmetic.
 type schedule struct {
 	tasks []task
 	reach int  // blocks to either side that hold neighbours of a block
 	ring  bool // the first block may be a neighbour of the last
 }
 
-// newSchedule orders the tasks of a step on a grid.
-func newSchedule(g *Grid, stages int) schedule {
+// cacheBytes is what a group of stages may need of the cache that the processors
+// share.
+const cacheBytes = 8 << 20
+
+// newSchedule orders the tasks of a step on a grid; blockBytes is the memory that a
+// block needs.
+func newSchedule(g *Grid, stages, blockBytes int) schedule {
 	count := g.padded / width
 	direct, around := g.reach()
-	w := schedule{reach: direct}
+	s := schedule{reach: direct}
 	lag := direct + 2
-	if lag >= count {
-		lag, w.reach, w.ring = count, around, true
+	group := min(stages, max(1, cacheBytes/(lag*blockBytes)))
+	if lag >= count { // small, or closed along the slowest axis
+		group, s.reach, s.ring = 1, around, true
 	}
-	for front := range count + (stages-1)*lag {
-		for stage := range stages {
-			if block := front - stage*lag; block >= 0 && block < count {
-				w.tasks = append(w.tasks, task{stage, block})
+	for first := 0; first < stages; first += group {
+		last := min(first+group, stages)
+		for front := range count + (last-first-1)*lag {
+			for stage := first; stage < last; stage++ {
+				if block := front - (stage-first)*lag; block >= 0 && block < count {
+					s.tasks = append(s.tasks, task{stage, block})
+				}
 			}
 		}
 	}
-	return w
+	return s
 }
 
 // reach returns how many blocks away the neighbours of a block are at most, straight

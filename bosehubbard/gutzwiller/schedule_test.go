@@ -16,10 +16,10 @@ func TestSchedule(t *testing.T) {
 		{[]int{20, 20, 20}, []bool{false, true, false}},
 	}...)
 	waves := 0
-	for _, shape := range grids {
+	for i, shape := range grids {
 		g := mustGrid(t, shape.sites, shape.periodic)
 		const stages = 12
-		order := newSchedule(g, stages)
+		order := newSchedule(g, stages, 50_000<<(i%4)) // groups of some and of all stages
 		count := g.padded / width
 		if len(order.tasks) != stages*count {
 			t.Fatalf("%v: %d tasks, want %d", shape.sites, len(order.tasks), stages*count)
