@@ -19,7 +19,7 @@
 // particle-hole pairs and a perfect one is a fixed point in time: it needs a seed
 // (State.AddNoise). The superfluid has no phonons: near U/J = 2 the entropy is far
 // too small, so that a thermal site must not be the only source of a temperature
-// there; the lobes are too large, in one dimension badly. The evolution never
+// there; the lobes are too small, in one dimension badly. The evolution never
 // comes to thermal equilibrium by itself.
 //
 // References: Fisher, Weichman, Grinstein, Fisher, Phys. Rev. B 40, 546 (1989);
