@@ -58,11 +58,20 @@ func (w *Window) choose(l look) {
 	w.arrange()
 	w.Echo()
 	w.content.Refresh()
+	for _, overlay := range w.window.Canvas().Overlays().List() {
+		overlay.Refresh()
+	}
 	w.say(l.keep(w.folder))
 }
 
+// wear changes the look of the program; what is drawn already is refreshed by
+// [Window.choose].
 func (w *Window) wear(l look) {
 	w.look = l
+	if worn, ok := w.app.Settings().Theme().(*Theme); ok {
+		worn.wear(l)
+		return
+	}
 	w.app.Settings().SetTheme(NewTheme(l.Variant, l.Scale))
 }
 

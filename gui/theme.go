@@ -2,6 +2,7 @@ package gui
 
 import (
 	"image/color"
+	"sync/atomic"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/theme"
@@ -17,10 +18,11 @@ const (
 	Dark         Variant = "dark"
 )
 
-// Theme is the look of the window: the tokens, a variant and a text size.
+// Theme is the look of the window: the tokens, a variant and a text size. Both can be
+// changed in place: for another theme the toolkit reads its fonts anew, and keeps
+// those of the last ten or so.
 type Theme struct {
-	variant Variant
-	scale   float32 // of text and everything measured by it; 1 is 100 %
+	wears atomic.Pointer[look]
 }
 
 var _ fyne.Theme = (*Theme)(nil)
@@ -28,14 +30,22 @@ var _ fyne.Theme = (*Theme)(nil)
 // NewTheme returns the look for a variant and a text scale, 1 being 100 %. A
 // scale outside 0.5 to 3 is moved to the nearer of the two.
 func NewTheme(v Variant, scale float32) *Theme {
-	return &Theme{variant: v, scale: min(max(scale, 0.5), 3)}
+	t := &Theme{}
+	t.wear(look{v, scale})
+	return t
+}
+
+// wear changes the look. What is drawn has to be refreshed.
+func (t *Theme) wear(l look) {
+	l.Scale = min(max(l.Scale, 0.5), 3)
+	t.wears.Store(&l)
 }
 
 // Variant returns the variant asked for.
-func (t *Theme) Variant() Variant { return t.variant }
+func (t *Theme) Variant() Variant { return t.wears.Load().Variant }
 
 // Scale returns the text scale.
-func (t *Theme) Scale() float32 { return t.scale }
+func (t *Theme) Scale() float32 { return t.wears.Load().Scale }
 
 // Color returns a colour of the window or of the toolkit.
 func (t *Theme) Color(name fyne.ThemeColorName, system fyne.ThemeVariant) color.Color {
@@ -58,7 +68,7 @@ func (t *Theme) Color(name fyne.ThemeColorName, system fyne.ThemeVariant) color.
 }
 
 func (t *Theme) resolve(system fyne.ThemeVariant) fyne.ThemeVariant {
-	switch t.variant {
+	switch t.Variant() {
 	case Light:
 		return theme.VariantLight
 	case Dark:
@@ -72,9 +82,25 @@ func (t *Theme) Font(style fyne.TextStyle) fyne.Resource {
 	return theme.DefaultTheme().Font(style)
 }
 
-// Icon returns the built-in icons.
+// Icon returns the built-in icons. The toolkit keeps their drawings by name, so the
+// name says the variant.
 func (t *Theme) Icon(name fyne.ThemeIconName) fyne.Resource {
-	return theme.DefaultTheme().Icon(name)
+	icon := theme.DefaultTheme().Icon(name)
+	if themed, ok := icon.(fyne.ThemedResource); ok {
+		return &variantIcon{themed, t}
+	}
+	return icon
+}
+
+// variantIcon is an icon in the colours of the present variant.
+type variantIcon struct {
+	fyne.ThemedResource
+	theme *Theme
+}
+
+// Name tells the icons of the variants apart.
+func (i *variantIcon) Name() string {
+	return string(i.theme.Variant()) + "-" + i.ThemedResource.Name()
 }
 
 // sizes are the toolkit's sizes that the tokens fix, at 100 %.
@@ -100,9 +126,9 @@ var sizes = map[fyne.ThemeSizeName]float32{
 // Size returns a size of the toolkit, scaled with the text.
 func (t *Theme) Size(name fyne.ThemeSizeName) float32 {
 	if v, ok := sizes[name]; ok {
-		return v * t.scale
+		return v * t.Scale()
 	}
-	return theme.DefaultTheme().Size(name) * t.scale
+	return theme.DefaultTheme().Size(name) * t.Scale()
 }
 
 // tint is the present colour of a name.
