@@ -47,7 +47,7 @@ func TestPagesOnADisplay(t *testing.T) {
 				s.do("xdotool", "mousemove", "1400", "880") // off the window
 				s.picture(name)
 				time.Sleep(2 * time.Second) // for all that is drawn and computed behind
-				s.keys("F6", "Escape") // which drops what the pointer read
+				s.keys("F6", "Escape")      // which drops what the pointer read
 				whole := s.picture(name + "-focus")
 				s.keys("Right", "Right")
 				s.waitFor("crosshair", func() bool { return !same(s.picture(name+"-read"), whole) })
