@@ -119,27 +119,33 @@ func (s *Scroller) Fit() {
 	}
 }
 
-// Reveal scrolls so that an object of the column is in sight.
+// Reveal scrolls so that an object of the column is in sight, with some room around
+// it for the outline of the focus.
 func (s *Scroller) Reveal(o fyne.CanvasObject) {
 	driver := fyne.CurrentApp().Driver()
 	top := driver.AbsolutePositionForObject(o).Y - driver.AbsolutePositionForObject(s.Column).Y
 	bottom := top + o.Size().Height
-	offset := s.scroll.Offset
+	room, offset := px(space8), s.scroll.Offset
 	switch {
 	case top < offset.Y:
-		offset.Y = top
+		offset.Y = top - room
 	case bottom > offset.Y+s.scroll.Size().Height:
-		offset.Y = bottom - s.scroll.Size().Height
+		offset.Y = bottom + room - s.scroll.Size().Height
 	default:
 		return
 	}
+	offset.Y = min(max(offset.Y, 0), s.lowest())
 	s.scroll.ScrollToOffset(offset)
+}
+
+// lowest is how far the column can be scrolled.
+func (s *Scroller) lowest() float32 {
+	return max(s.Column.Size().Height-s.scroll.Size().Height, 0)
 }
 
 // Begin scrolls so that an object of the column stands on top, as far as that goes.
 func (s *Scroller) Begin(o fyne.CanvasObject) {
-	lowest := max(s.Column.Size().Height-s.scroll.Size().Height, 0)
-	s.scroll.ScrollToOffset(fyne.NewPos(0, min(max(o.Position().Y-px(s.Column.layout.pad), 0), lowest)))
+	s.scroll.ScrollToOffset(fyne.NewPos(0, min(max(o.Position().Y-px(s.Column.layout.pad), 0), s.lowest())))
 }
 
 // CreateRenderer implements [fyne.Widget].

@@ -14,7 +14,6 @@ import (
 type GroupHead struct {
 	control
 	OnToggle func()
-	OnFocus  func()
 
 	name, summary *Prose
 	open          bool
@@ -30,11 +29,11 @@ var (
 	_ desktop.Cursorable = (*GroupHead)(nil)
 )
 
-// NewGroupHead returns a heading without a name.
+// NewGroupHead returns a heading without a name; toggle opens or shuts the group.
 func NewGroupHead(toggle, focus func(), key func(*fyne.KeyEvent)) *GroupHead {
-	h := &GroupHead{OnToggle: toggle, OnFocus: focus,
+	h := &GroupHead{OnToggle: toggle,
 		name: NewProse("", textBody, 1).bold(), summary: NewProse("", textAxis, 0).soft()}
-	h.OnKey = key
+	h.OnKey, h.OnFocus = key, focus
 	h.ExtendBaseWidget(h)
 	return h
 }
@@ -67,12 +66,6 @@ func (h *GroupHead) turn(open bool) {
 	if h.open != open {
 		h.OnToggle()
 	}
-}
-
-// FocusGained shows the focus.
-func (h *GroupHead) FocusGained() {
-	h.control.FocusGained()
-	h.OnFocus()
 }
 
 // MouseIn darkens the ground.

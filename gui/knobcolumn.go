@@ -51,7 +51,7 @@ func NewKnobColumn(desk *session.Session, events ColumnEvents) *KnobColumn {
 		k.On.Echo()
 	})
 	k.rail.Linked = true
-	k.rail.OnKey = events.Key
+	k.rail.OnKey, k.rail.OnFocus = events.Key, func() { k.scroller.Reveal(k.rail) }
 	k.heading = NewProse("", textBody, 2).bold()
 	k.column = NewColumn(space8, space12)
 	k.scroller = NewScroller(k.column)

@@ -18,11 +18,12 @@ type partHead struct {
 
 var _ fyne.Widget = (*partHead)(nil)
 
-// newPartHead returns a heading; do carries out the action of its button.
-func newPartHead(do func(action string), key func(*fyne.KeyEvent)) *partHead {
+// newPartHead returns a heading; do carries out the action of its button, and focus
+// tells that the button has the focus.
+func newPartHead(do func(action string), focus func(*partHead), key func(*fyne.KeyEvent)) *partHead {
 	h := &partHead{name: NewProse("", textBody, 2).bold()}
 	h.remove = NewButton("", func() { do(h.action) })
-	h.remove.OnKey = key
+	h.remove.OnKey, h.remove.OnFocus = key, func() { focus(h) }
 	h.ExtendBaseWidget(h)
 	return h
 }

@@ -60,7 +60,8 @@ func (k *KnobColumn) assembleGroup(g session.Group) []fyne.CanvasObject {
 // partHead shows the heading of a part.
 func (k *KnobColumn) partHead(c *section, i int, p session.Part) *partHead {
 	for len(c.parts) <= i {
-		c.parts = append(c.parts, newPartHead(func(action string) { k.act(c, action) }, k.On.Key))
+		c.parts = append(c.parts, newPartHead(
+			func(action string) { k.act(c, action) }, func(h *partHead) { k.scroller.Reveal(h) }, k.On.Key))
 	}
 	c.parts[i].set(p)
 	return c.parts[i]
@@ -72,7 +73,7 @@ func (k *KnobColumn) setButtons(c *section, actions []session.Action) {
 	for i, a := range actions {
 		if i == len(c.buttons) {
 			button := NewButton("", func() { k.act(c, c.ids[i]) })
-			button.OnKey = k.On.Key
+			button.OnKey, button.OnFocus = k.On.Key, func() { k.scroller.Reveal(button) }
 			c.buttons = append(c.buttons, button)
 			c.flow.Objects = append(c.flow.Objects, button)
 		}

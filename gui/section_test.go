@@ -307,3 +307,30 @@ func BenchmarkShowAllValues(b *testing.B) {
 		bench.window.Show(state)
 	}
 }
+
+// Whatever gets the focus by Tab is in sight, all through the column.
+func TestFocusIsInSight(t *testing.T) {
+	for _, look := range []setup{{width: 1280, height: 768}, {width: 1024, height: 648, scale: 1.5}} {
+		b := newBench(t, look)
+		b.openAll()
+		k := b.window.column
+		driver := fyne.CurrentApp().Driver()
+		b.canvas().Focus(k.rail)
+		seen := 0
+		for range 200 {
+			b.canvas().FocusNext()
+			o, ok := b.canvas().Focused().(fyne.CanvasObject)
+			if !ok || o == fyne.CanvasObject(b.window.places) || o == fyne.CanvasObject(b.window.drawer) {
+				break
+			}
+			seen++
+			top := driver.AbsolutePositionForObject(o).Y - driver.AbsolutePositionForObject(k.scroller).Y
+			if top < 0 || top+o.Size().Height > k.scroller.Size().Height {
+				t.Errorf("%v: %T at %g to %g has the focus out of sight, in a column of %g", look, o, top, top+o.Size().Height, k.scroller.Size().Height)
+			}
+		}
+		if seen < 50 {
+			t.Errorf("%v: Tab reached %d places, want every value", look, seen)
+		}
+	}
+}

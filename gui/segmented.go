@@ -14,7 +14,6 @@ type Segmented struct {
 	Chosen   int  // -1 for none
 	Linked   bool // a line leads through the cells: they follow each other in time
 	OnChosen func(int)
-	OnFocus  func() // it has got the focus; may be nil
 }
 
 var (
@@ -36,14 +35,6 @@ func NewSegmented(chosen func(int)) *Segmented {
 func (s *Segmented) Set(cells []string, chosen int) {
 	s.Cells, s.Chosen = cells, chosen
 	s.Refresh()
-}
-
-// FocusGained shows the focus.
-func (s *Segmented) FocusGained() {
-	s.control.FocusGained()
-	if s.OnFocus != nil {
-		s.OnFocus()
-	}
 }
 
 // Tapped chooses the cell under the pointer.

@@ -169,16 +169,14 @@ func (w *Window) pageNamed(name string) int {
 func (w *Window) goTo(stage int, field string) {
 	w.desk.SelectStage(stage)
 	w.Echo()
-	if w.metrics.Fold == drawerFold && !w.drawerOpen {
-		w.toggleDrawer()
-	}
+	w.showColumn()
 	w.column.Reveal(field)
 }
 
 // apply takes an advice and leads to the field it changes.
 func (w *Window) apply(a session.Advice) {
 	w.did(w.desk.Apply(a))
-	w.column.Reveal(w.state.Touched)
+	w.reveal(w.state.Touched)
 }
 
 // did shows what became of an action: the new state, and why it was refused. A
