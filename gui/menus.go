@@ -114,8 +114,8 @@ func (w *Window) stageMenu() *fyne.Menu {
 		item("Previous stage", fyne.KeyUp, fyne.KeyModifierAlt, func() { w.nextStage(-1) }),
 		fyne.NewMenuItemSeparator(),
 		item("Add a stage after this one", fyne.KeyInsert, fyne.KeyModifierAlt, func() { w.did(w.desk.AddStage(w.state.Stage)) }),
-		item("Move the stage down", fyne.KeyDown, fyne.KeyModifierAlt|fyne.KeyModifierShift, func() { w.did(w.desk.MoveStage(w.state.Stage, +1)) }),
-		item("Move the stage up", fyne.KeyUp, fyne.KeyModifierAlt|fyne.KeyModifierShift, func() { w.did(w.desk.MoveStage(w.state.Stage, -1)) }),
+		item("Move the stage later", fyne.KeyDown, fyne.KeyModifierAlt|fyne.KeyModifierShift, func() { w.did(w.desk.MoveStage(w.state.Stage, +1)) }),
+		item("Move the stage earlier", fyne.KeyUp, fyne.KeyModifierAlt|fyne.KeyModifierShift, func() { w.did(w.desk.MoveStage(w.state.Stage, -1)) }),
 		item("Remove the stage", fyne.KeyDelete, fyne.KeyModifierAlt, func() { w.did(w.desk.RemoveStage(w.state.Stage)) }))
 }
 

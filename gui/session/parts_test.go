@@ -220,7 +220,7 @@ func TestAtomsPerSite(t *testing.T) {
 func TestSummaries(t *testing.T) {
 	s, _ := newTest(t, Options{})
 	for name, want := range map[string]string{
-		"Stage": "2.5 ms, linear", "Cloud": "80000 of 39K, 0.6 kB", "Lattice": "740 nm, 150 µm", "Beams": "'sheet', 'cross'",
+		"Stage": "2.5 ms, linear", "Cloud": "80000 of 39K at 0.6 kB", "Lattice": "740 nm, 150 µm", "Beams": "'sheet', 'cross'",
 		"Field": "along z, resonance at 402.5 G", "Plan": "Skerry bench, negative temperature",
 	} {
 		mustBe(t, name, groupNamed(t, s.State(), name).Summary, want)

@@ -19,7 +19,7 @@ func summary(group string, p *plan.Plan, fields []Field) string {
 	case stageGroup:
 		return joined(said("/duration_ms"), said("/shape"))
 	case cloudGroup:
-		return joined(said("/atoms")+" of "+said("/species"), said("/entropy_per_atom_kb"))
+		return said("/atoms") + " of " + said("/species") + " at " + said("/entropy_per_atom_kb")
 	case latticeGroup:
 		return joined(distinct(fields, "/wavelength_nm"), distinct(fields, "/waist_um"))
 	case beamsGroup:
