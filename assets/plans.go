@@ -4,7 +4,6 @@ import (
 	"embed"
 	"fmt"
 	"io/fs"
-	"path"
 	"strings"
 )
 
@@ -13,17 +12,7 @@ var plans embed.FS
 
 // PlanNames returns the names of the embedded demo plans, such as "skerry-demo",
 // in alphabetical order.
-func PlanNames() []string {
-	files, err := fs.Glob(plans, "plans/*.json")
-	if err != nil {
-		panic("assets: " + err.Error()) // the pattern is wrong
-	}
-	names := make([]string, len(files))
-	for i, file := range files {
-		names[i] = strings.TrimSuffix(path.Base(file), ".json")
-	}
-	return names
-}
+func PlanNames() []string { return names(plans, "plans") }
 
 // Plan returns the text of one demo plan, as package plan reads it.
 //

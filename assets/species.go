@@ -3,9 +3,6 @@ package assets
 import (
 	"embed"
 	"fmt"
-	"io/fs"
-	"path"
-	"strings"
 )
 
 //go:embed species/*.json
@@ -13,17 +10,7 @@ var species embed.FS
 
 // SpeciesNames returns the names of the embedded species files, such as "39K",
 // in alphabetical order.
-func SpeciesNames() []string {
-	files, err := fs.Glob(species, "species/*.json")
-	if err != nil {
-		panic("assets: " + err.Error()) // the pattern is wrong
-	}
-	names := make([]string, len(files))
-	for i, file := range files {
-		names[i] = strings.TrimSuffix(path.Base(file), ".json")
-	}
-	return names
-}
+func SpeciesNames() []string { return names(species, "species") }
 
 // SpeciesFile returns the text of one species file, as package atom reads it.
 //

@@ -15,7 +15,7 @@ LONG=""
 STATICCHECK=honnef.co/go/tools/cmd/staticcheck@v0.8.2
 GOVULNCHECK=golang.org/x/vuln/cmd/govulncheck@v1.9.0
 PACKAGES="./... ./testdata"
-GOROUTINES="./gui/session ./bosehubbard/figure ./bosehubbard/exact ./bosehubbard/thermo ./bosehubbard/num/..."
+GOROUTINES="./gui/session ./bosehubbard/figure ./bosehubbard/passage ./bosehubbard/gutzwiller ./bosehubbard/exact ./bosehubbard/thermo ./bosehubbard/fock ./bosehubbard/num/... ./cmd/hilltop-batch"
 
 logs=$(mktemp -d)
 trap 'rm -rf "$logs"' EXIT

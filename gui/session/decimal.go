@@ -5,11 +5,12 @@ import (
 	"strconv"
 	"strings"
 
+	"hilltop/bosehubbard/num/digits"
 	"hilltop/bosehubbard/si"
 )
 
 // minus is the sign of negative numbers on the screen.
-const minus = "−"
+const minus = digits.Minus
 
 var rationalBohr = rational(si.BohrRadius)
 
@@ -22,22 +23,7 @@ const shownDigits = 7
 // Digits writes a number with at most the given significant digits, without
 // trailing zeros, with U+2212 for minus. Very large and very small numbers are
 // written like 1.2e−7.
-func Digits(x float64, digits int) string {
-	if x == 0 {
-		return "0"
-	}
-	text := strconv.FormatFloat(x, 'e', max(digits, 1)-1, 64)
-	mantissa, exponent, _ := strings.Cut(text, "e")
-	power, _ := strconv.Atoi(exponent)
-	if power < -5 || power >= max(digits, 1)+3 && power >= 9 {
-		if strings.Contains(mantissa, ".") {
-			mantissa = strings.TrimRight(strings.TrimRight(mantissa, "0"), ".")
-		}
-		return proper(mantissa + "e" + strconv.Itoa(power))
-	}
-	rounded, _ := strconv.ParseFloat(text, 64)
-	return proper(strconv.FormatFloat(rounded, 'f', -1, 64))
-}
+func Digits(x float64, n int) string { return digits.Format(x, max(n, 1)) }
 
 func proper(text string) string { return strings.ReplaceAll(text, "-", minus) }
 
